@@ -1,0 +1,49 @@
+/// What the command line asks for: a plain struct for each command, read in desk.cpp, carried out beside it.
+#pragma once
+
+#include <turnwright/catalogue/catalogue.hpp>
+#include <turnwright/plan/shop.hpp>
+
+#include <iosfwd>
+#include <optional>
+#include <string>
+#include <vector>
+
+namespace turnwright::cli {
+
+/// Exit status of the tool.
+enum status { done = 0, cannot_be_met = 1, input_wrong = 2, own_failure = 3 };
+
+/// Where results go and whether they may replace a file.
+struct output_wish {
+  std::optional<std::string> json;  ///< "-" for standard output
+  bool force = false;
+};
+
+struct plan_order {
+  std::optional<std::string> job;  ///< a file, or "-" for standard input
+  std::string mains;
+  std::vector<std::string> windings;
+  std::optional<std::string> write_job;
+  std::vector<std::string> accept;
+  bool workings = false;
+  output_wish output;
+};
+
+struct table_order {
+  std::optional<std::string> name;
+  std::optional<std::string> at, frequency;  ///< of a steel
+  bool csv = false;
+  output_wish output;
+};
+
+/// Each returns the exit status; results go to `out`, everything else to `aside`. They throw `refused` for wrong input.
+status run_plan(const plan_order& order, const catalogue& tables, const shop& s, std::ostream& out, std::ostream& aside);
+status run_wire(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out);
+status run_core(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out);
+status run_steel(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out);
+
+/// Reads the command line and carries it out; never throws.
+status serve(int argc, const char* const* argv, std::ostream& out, std::ostream& aside);
+
+}  // namespace turnwright::cli

@@ -1,0 +1,53 @@
+#include <ostream>
+
+#include <turnwright/job/job.hpp>
+#include <turnwright/job/result.hpp>
+#include <turnwright/plan/plan.hpp>
+#include <turnwright/remark/wording.hpp>
+#include <turnwright/sheet/report.hpp>
+
+#include "files.hpp"
+#include "orders.hpp"
+
+namespace turnwright::cli {
+namespace {
+
+struct job_text {
+  std::string text, origin;
+};
+
+job_text text_of(const plan_order& order) {
+  const bool on_line = !order.mains.empty() || !order.windings.empty();
+  if (order.job && on_line) {
+    throw refused(wording::other("either-or", "plan", "both a job file and --mains or --winding", "one of them"));
+  }
+  if (!order.job && !on_line) {
+    throw refused(wording::missing("plan", "a job file, - for standard input, or --mains and --winding", "turnwright plan --help shows both"));
+  }
+  if (order.job) return {read_whole(*order.job), spoken(*order.job)};
+  return {job_of({order.mains, order.windings}), "command line"};
+}
+
+}  // namespace
+
+status run_plan(const plan_order& order, const catalogue& tables, const shop& s, std::ostream& out, std::ostream& aside) {
+  const job_text job = text_of(order);
+  demand d = read_job(job.text, job.origin, s, tables);
+  d.accepted = order.accept;
+  const design p = plan(d, s);
+  const bool json_out = order.output.json == "-";
+  const std::string json = order.output.json ? json_of(p) : "";
+  if (order.write_job) write_whole(*order.write_job, job.text, order.output.force);
+  if (order.output.json && !json_out) write_whole(*order.output.json, json, order.output.force);
+  out << (json_out ? json : report_of(p, order.workings));
+  if (!p.windable) {
+    for (const check& c : p.checks) {
+      if (c.weight != level::stop) continue;
+      aside << "cannot be wound: " << c.code << ": " << c.text << "; found " << c.found << ", bound " << c.bound << '\n';
+      if (!c.cure.empty()) aside << "  cure: " << c.cure << '\n';
+    }
+  }
+  return p.windable ? done : cannot_be_met;
+}
+
+}  // namespace turnwright::cli

@@ -1,0 +1,86 @@
+#include <ostream>
+
+#include <turnwright/job/result.hpp>
+#include <turnwright/measure/read.hpp>
+#include <turnwright/measure/literals.hpp>
+#include <turnwright/remark/wording.hpp>
+#include <turnwright/sheet/report.hpp>
+
+#include "files.hpp"
+#include "orders.hpp"
+
+namespace turnwright::cli {
+
+using namespace literals;
+
+namespace {
+
+// Text to standard output, or JSON there or in a file.
+void deliver(const output_wish& wish, const std::string& text, const std::string& json, std::ostream& out) {
+  if (wish.json && *wish.json != "-") write_whole(*wish.json, json, wish.force);
+  out << (wish.json == "-" ? json : text);
+}
+
+bool gave_csv(const table_order& order, const catalogue& tables, std::initializer_list<const char*> names, std::ostream& out) {
+  if (!order.csv) return false;
+  for (const char* name : names) out << tables.named(name).text;
+  return true;
+}
+
+template <class Q>
+std::optional<Q> asked(const std::optional<std::string>& text, const char* option, const char* least, const char* most) {
+  if (!text) return std::nullopt;
+  const reading<Q> r = read<Q>(*text);
+  if (!r.value) throw refused(wording::quantity(option, *text, r.fault));
+  const Q found = *r.value, low = *read<Q>(least).value, high = *read<Q>(most).value;
+  if (found < low || high < found) throw refused(wording::out_of_range(option, *text, least, most));
+  return found;
+}
+
+}  // namespace
+
+status run_wire(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out) {
+  if (gave_csv(order, tables, {"wire_metric", "wire_awg", "wire_swg"}, out)) return done;
+  if (order.name) {
+    const looked_up_gauge g = s.wire.look_up(*order.name, "wire");
+    deliver(order.output, report_of(g, s), json_of(g, s), out);
+    return done;
+  }
+  std::vector<std::string> names;
+  for (const wire_system system : {wire_system::metric, wire_system::awg, wire_system::swg}) {
+    for (const gauge& g : s.wire.sizes(system)) names.push_back(g.size);
+  }
+  deliver(order.output, list_of_wires(s), json_of_names("wires", names), out);
+  return done;
+}
+
+status run_core(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out) {
+  if (gave_csv(order, tables, {"laminations"}, out)) return done;
+  if (order.name) {
+    const lamination& l = s.patterns.named(*order.name, "core");
+    deliver(order.output, report_of(l), json_of(l), out);
+    return done;
+  }
+  std::vector<std::string> names;
+  for (const lamination& l : s.patterns.all()) names.push_back(l.name);
+  deliver(order.output, list_of_cores(s), json_of_names("cores", names), out);
+  return done;
+}
+
+status run_steel(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out) {
+  if (gave_csv(order, tables, {"steels"}, out)) return done;
+  const auto b = asked<teslas>(order.at, "--at", "0.01 T", "2.2 T");
+  const hertz f = asked<hertz>(order.frequency, "--frequency", "10 Hz", "1 kHz").value_or(50_Hz);
+  if (order.name) {
+    const steel& g = s.steels.named(*order.name, "steel");
+    const std::optional<steel_point> at = b ? std::optional(steel_point{*b, f}) : std::nullopt;
+    deliver(order.output, report_of(g, b, f), json_of(g, at), out);
+    return done;
+  }
+  std::vector<std::string> names;
+  for (const steel& g : s.steels.all()) names.push_back(g.name);
+  deliver(order.output, list_of_steels(s), json_of_names("steels", names), out);
+  return done;
+}
+
+}  // namespace turnwright::cli

@@ -1,0 +1,137 @@
+#include <turnwright/catalogue/table.hpp>
+
+#include <algorithm>
+#include <cctype>
+#include <charconv>
+#include <cmath>
+
+#include <turnwright/remark/wording.hpp>
+
+namespace turnwright {
+namespace {
+
+struct split_line {
+  std::vector<std::string> cells;
+  bool closed = true;  // no quotation mark left open
+};
+
+split_line split(std::string_view line) {
+  split_line out{{""}, true};
+  bool quoted = false;
+  for (std::size_t i = 0; i < line.size(); ++i) {
+    const char c = line[i];
+    if (quoted && c == '"' && i + 1 < line.size() && line[i + 1] == '"') {
+      out.cells.back() += '"';
+      ++i;
+    } else if (c == '"') {
+      quoted = !quoted;
+    } else if (c == ',' && !quoted) {
+      out.cells.emplace_back();
+    } else {
+      out.cells.back() += c;
+    }
+  }
+  out.closed = !quoted;
+  return out;
+}
+
+std::string_view trimmed(std::string_view s) {
+  while (!s.empty() && std::isspace(static_cast<unsigned char>(s.front()))) s.remove_prefix(1);
+  while (!s.empty() && std::isspace(static_cast<unsigned char>(s.back()))) s.remove_suffix(1);
+  return s;
+}
+
+}  // namespace
+
+std::string row::text(std::string_view column) const {
+  const auto at = std::find(columns_->begin(), columns_->end(), column);
+  if (at == columns_->end()) return {};
+  return cells_[static_cast<std::size_t>(at - columns_->begin())];
+}
+
+std::optional<double> row::number(std::string_view column) const {
+  const std::string cell = text(column);
+  if (cell.empty()) return std::nullopt;
+  double value = 0;
+  const auto done = std::from_chars(cell.data(), cell.data() + cell.size(), value);
+  if (done.ec != std::errc{} || done.ptr != cell.data() + cell.size() || !std::isfinite(value)) {
+    throw refused(wording::other("bad-number", place(column), wording::quoted(cell), "a finite decimal number"));
+  }
+  return value;
+}
+
+double row::needed(std::string_view column) const {
+  const auto value = number(column);
+  if (!value) throw refused(wording::missing(place(column), "a number in column " + std::string(column)));
+  return *value;
+}
+
+std::vector<std::string> row::list(std::string_view column) const {
+  std::vector<std::string> out;
+  const std::string cell = text(column);
+  for (std::size_t from = 0; from < cell.size();) {
+    const std::size_t to = std::min(cell.find(';', from), cell.size());
+    const auto item = trimmed(std::string_view(cell).substr(from, to - from));
+    if (!item.empty()) out.emplace_back(item);
+    from = to + 1;
+  }
+  return out;
+}
+
+standing row::known_how() const {
+  const auto s = standing_named(text("standing"));
+  if (!s) {
+    throw refused(wording::other("unknown-standing", place("standing"), wording::quoted(text("standing")),
+                                 "read, memory, derived or estimate"));
+  }
+  return *s;
+}
+
+std::string row::place(std::string_view column) const {
+  std::string where = origin_ + ":" + std::to_string(line_);
+  if (!column.empty()) where += ":" + std::string(column);
+  return where;
+}
+
+std::string row::source() const { return text("source"); }
+
+std::vector<row> read_csv(std::string_view text, const std::string& origin) {
+  std::vector<row> rows;
+  std::vector<remark> faults;
+  std::shared_ptr<const std::vector<std::string>> columns;
+  if (text.starts_with("\xEF\xBB\xBF")) text.remove_prefix(3);
+  int line_number = 0;
+  while (!text.empty()) {
+    const std::size_t end = std::min(text.find('\n'), text.size());
+    std::string_view line = text.substr(0, end);
+    text.remove_prefix(std::min(end + 1, text.size()));
+    ++line_number;
+    if (line.ends_with('\r')) line.remove_suffix(1);
+    if (trimmed(line).empty() || line.starts_with('#')) continue;
+    split_line parts = split(line);
+    for (std::string& cell : parts.cells) cell = std::string(trimmed(cell));
+    if (!columns) {
+      columns = std::make_shared<const std::vector<std::string>>(std::move(parts.cells));
+    } else if (!parts.closed || parts.cells.size() != columns->size()) {
+      faults.push_back(wording::other("bad-row", origin + ":" + std::to_string(line_number),
+                                      std::to_string(parts.cells.size()) + " cells",
+                                      std::to_string(columns->size()) + " cells, as in the header row"));
+    } else {
+      rows.emplace_back(columns, std::move(parts.cells), origin, line_number);
+    }
+  }
+  if (!columns) faults.push_back(wording::missing(origin, "a header row"));
+  if (!faults.empty()) throw refused(std::move(faults));
+  return rows;
+}
+
+std::string name_key(std::string_view name) {
+  std::string key;
+  for (const char c : name) {
+    if (c == '-' || c == '_' || std::isspace(static_cast<unsigned char>(c))) continue;
+    key += static_cast<char>(std::tolower(static_cast<unsigned char>(c)));
+  }
+  return key;
+}
+
+}  // namespace turnwright

@@ -1,0 +1,55 @@
+/// A table of the trade as it is read from CSV: rows that know where they came from.
+#pragma once
+
+#include <turnwright/catalogue/standing.hpp>
+#include <turnwright/remark/remark.hpp>
+
+#include <memory>
+#include <optional>
+#include <string>
+#include <string_view>
+#include <vector>
+
+namespace turnwright {
+
+/// One row. Cells are asked for by column name; every fault found so is noted with its place.
+class row {
+ public:
+  row(std::shared_ptr<const std::vector<std::string>> columns, std::vector<std::string> cells, std::string origin, int line)
+      : columns_(std::move(columns)), cells_(std::move(cells)), origin_(std::move(origin)), line_(line) {}
+
+  /// The cell as text; empty where the column or the cell is.
+  std::string text(std::string_view column) const;
+  /// The cell as a number, or nothing where it is empty. Throws `refused` where it is no finite number.
+  std::optional<double> number(std::string_view column) const;
+  /// The cell as a number. Throws `refused` where it is empty or no finite number.
+  double needed(std::string_view column) const;
+  /// The cells of a list column, parted by ';'.
+  std::vector<std::string> list(std::string_view column) const;
+  /// Standing of the row. Throws `refused` where the word is unknown.
+  standing known_how() const;
+  /// Where the row stands, as "file:line" or "file:line:column".
+  std::string place(std::string_view column = {}) const;
+  /// Where the row's figures come from: its `source` cell and, for a row of the shop's own, its file.
+  std::string source() const;
+
+ private:
+  std::shared_ptr<const std::vector<std::string>> columns_;
+  std::vector<std::string> cells_;
+  std::string origin_;
+  int line_;
+};
+
+struct table {
+  std::string name;
+  std::string text;  ///< the bundled file, to the byte
+  std::vector<row> rows;
+};
+
+/// Rows of a CSV text. Throws `refused` with every malformed line.
+std::vector<row> read_csv(std::string_view text, const std::string& origin);
+
+/// A name as it is compared: case, blanks and hyphens dropped.
+std::string name_key(std::string_view name);
+
+}  // namespace turnwright

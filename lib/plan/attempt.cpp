@@ -1,0 +1,235 @@
+#include <turnwright/plan/attempt.hpp>
+
+#include <algorithm>
+#include <cmath>
+
+#include <turnwright/measure/literals.hpp>
+#include <turnwright/measure/written.hpp>
+
+namespace turnwright {
+
+using namespace literals;
+
+namespace {
+
+constexpr double comfortable_fill = 0.92;
+
+std::vector<load_ratio> first_guess(const demand& d) {
+  // Volts on load over no load by size, from practice (memory); the fixed point replaces it.
+  const double va = plain(rating_of(d)), ratio = 1 / (va < 30 ? 1.08 : va > 200 ? 1.04 : 1.06);
+  std::vector<load_ratio> all;
+  for (const secondary_wish& w : d.secondaries) all.push_back(w.no_load ? load_ratio{} : load_ratio{ratio, ratio});
+  return all;
+}
+
+std::vector<load_ratio> ratios_of(const demand& d, const draft& f, const running& r) {
+  std::vector<load_ratio> all(d.secondaries.size());
+  const auto ports = ports_of(d, f);
+  for (std::size_t k = 0; k < ports.size(); ++k) {
+    if (d.secondaries[ports[k].secondary].no_load) continue;
+    const double ratio = plain(r.electric.ports[k].on_load.plain()) / plain(r.electric.ports[k].no_load.plain());
+    (ports[k].half == 0 ? all[ports[k].secondary].first : all[ports[k].secondary].second) = ratio;
+  }
+  return all;
+}
+
+double score_of(const demand& d, const draft& f, const running& r) {
+  double worst = 0;
+  const auto ports = ports_of(d, f);
+  for (std::size_t k = 0; k < ports.size(); ++k) {
+    const secondary_wish& w = d.secondaries[ports[k].secondary];
+    const supply::port_state& s = r.electric.ports[k];
+    const double wanted = plain(ports[k].half == 1 ? *w.second_half : w.voltage);
+    worst = std::max(worst, volts_off(w, plain((w.no_load ? s.no_load : s.on_load).plain()) / wanted));
+  }
+  return worst;
+}
+
+bool same_wires(const wire_set& a, const wire_set& b) {
+  return std::equal(a.begin(), a.end(), b.begin(), b.end(), [](const auto& x, const auto& y) {
+    return std::equal(x.begin(), x.end(), y.begin(), y.end(), [](const wire_pick& p, const wire_pick& q) {
+      return p.wire.size == q.wire.size && p.strands == q.strands;
+    });
+  });
+}
+
+struct settled_round {
+  draft f;
+  running r;
+  wire_set wires;
+  double score;
+};
+
+// Turns and wires at one density until both stand still. They are whole numbers, so they may also go round in a ring:
+// then the member of the ring whose volts are best is kept.
+attempt settle(const demand& d, const shop& s, const core_body& core, const flux_limits& flux,
+               amperes_per_square_metre density, bool stepped) {
+  std::vector<load_ratio> ratios = first_guess(d);
+  std::vector<double> weights(coils_of(d).size(), 1.0);
+  amperes line = as<amperes>(1.15 * plain(rating_of(d)) / plain(d.primary.on));
+  const selector_position at = nominal_position(d.primary);
+  std::vector<settled_round> seen;
+  attempt out{draft{core, {}, {}, {}, {}, {}, 0_m, 0, false}, {}, {}, flux, density, {}, 0, 0, false};
+  for (int round = 1; round <= 8 && !out.stood_still; ++round) {
+    out.rounds = round;
+    const turn_set n = choose_turns(d, core, flux, ratios);
+    const wire_set wires = pick_wires(d, s, core.choice().pattern.tongue, sizing_currents(d, line, stepped), density, weights);
+    const auto again = std::find_if(seen.begin(), seen.end(), [&](const settled_round& o) { return o.f.n == n && same_wires(o.wires, wires); });
+    if (again != seen.end()) {
+      seen.erase(seen.begin(), again);  // what is left is the fixed point, or the ring
+      out.stood_still = true;
+      break;
+    }
+    draft f = lay_out(d, s, core, n, wires);
+    running r = run(d, f, at, 1.0);
+    ratios = ratios_of(d, f, r);
+    line = r.electric.primary_current.plain();
+    weights = density_weights(f);
+    const double score = score_of(d, f, r);
+    seen.push_back({std::move(f), std::move(r), wires, score});
+  }
+  settled_round& kept = *std::min_element(seen.begin(), seen.end(), [](const auto& a, const auto& b) { return a.score < b.score; });
+  out.volts_score = kept.score;
+  out.coil = std::move(kept.f);
+  out.nominal = std::move(kept.r);
+  return out;
+}
+
+limit_test at_most(std::string code, std::string what, double found, double bound, kind k) {
+  return {std::move(code), std::move(what), found, bound, k, found <= bound * (1 + 1e-9)};
+}
+
+void test_resistances(const demand& d, attempt& a) {
+  const auto test = [&](const winding_wishes& w, const std::string& name, ohms found) {
+    if (w.resistance_most) {
+      a.limits.push_back(at_most("regulation", "resistance of " + name + " at 20 degC", plain(found), plain(*w.resistance_most), kind::resistance));
+    }
+    if (w.resistance_least) {
+      a.limits.push_back({"rectifier-limits", "resistance of " + name + " at 20 degC, at least", plain(found), plain(*w.resistance_least),
+                          kind::resistance, found >= *w.resistance_least});
+    }
+  };
+  for (const coil_draft& c : a.coil.coils) {
+    const winding_wishes& w = c.role.primary ? d.primary.fixed : d.secondaries[c.role.which].fixed;
+    test(w, c.role.name, resistance_20(c.laid, turns{0}, total_turns(c.laid)));
+  }
+}
+
+void test_limits(const demand& d, attempt& a) {
+  const draft& f = a.coil;
+  const limits_wish& l = d.limits;
+  kelvins hottest = 0_K;
+  for (const kelvins& k : a.high.heat.windings) hottest = std::max(hottest, k);
+  a.limits.push_back(at_most("window-fit", "build over winding height", f.too_wide ? 9.99 : f.fill, 1.0, kind::ratio));
+  a.limits.push_back(at_most("heat", "rise of the hottest winding at high mains", plain(hottest), plain(l.temperature_rise), kind::temperature_rise));
+  a.limits.push_back(at_most("flux-high", "flux density at nominal mains, no load",
+                             plain(flux_at(d, f.core, f.n.primary, a.nominal.at, 1.0)), plain(a.flux.nominal), kind::flux_density));
+  a.limits.push_back(at_most("flux-high", "flux density at highest mains on the worst tap", plain(worst_flux(d, f.core, f.n.primary)),
+                             plain(a.flux.high), kind::flux_density));
+  if (l.current_density) {
+    a.limits.push_back(at_most("heat", "current density", plain(worst_density(d, f, a.nominal)), plain(*l.current_density), kind::current_density));
+  }
+  if (l.regulation_ratio) {
+    a.limits.push_back(at_most("regulation", "regulation of the worst winding", worst_regulation(a.nominal), *l.regulation_ratio, kind::ratio));
+  }
+  if (l.height) a.limits.push_back(at_most("height-limit", "height over the yokes", plain(f.core.choice().pattern.height), plain(*l.height), kind::length));
+  if (l.mass) a.limits.push_back(at_most("mass-limit", "mass", plain(total_mass(f)), plain(*l.mass), kind::mass));
+  test_resistances(d, a);
+}
+
+bool holds(const attempt& a, std::string_view code) {
+  return std::all_of(a.limits.begin(), a.limits.end(), [&](const limit_test& t) { return t.code != code || t.holds; });
+}
+
+flux_limits limits_of(const demand& d, const steel& grade) {
+  return {d.limits.flux_density.value_or(grade.flux_nominal), d.limits.flux_density_high.value_or(grade.flux_high)};
+}
+
+std::string summary(const attempt& a) {
+  kelvins hottest = 0_K;
+  for (const kelvins& k : a.high.heat.windings) hottest = std::max(hottest, k);
+  return a.coil.core.choice().pattern.name + " x " + shown(a.coil.core.choice().stack) + ", " + shown(a.density) + ": fill " +
+         fixed(100 * a.coil.fill, 1) + " %, rise " + fixed(plain(hottest), 1) + " K, volts " + fixed(100 * a.volts_score, 0) +
+         " % of tolerance, rounds " + std::to_string(a.rounds) + (a.stood_still ? "" : " (no fixed point)") +
+         ", heat steps " + std::to_string(a.nominal.steps) + ", residual " + shortest(rounded_to(a.nominal.residual_K, 2)) + " K";
+}
+
+}  // namespace
+
+double limit_test::excess() const {
+  if (holds) return 0;
+  return found > bound ? found / bound - 1 : bound / found - 1;
+}
+
+bool attempt::windable() const {
+  return volts_score <= 1 + 1e-9 && std::all_of(limits.begin(), limits.end(), [](const limit_test& t) { return t.holds; });
+}
+
+double attempt::excess() const {
+  double sum = std::max(0.0, volts_score - 1) * 0.1;
+  for (const limit_test& t : limits) sum += t.excess();
+  return sum;
+}
+
+amperes_per_square_metre worst_density(const demand& d, const draft& f, const running& nominal) {
+  amperes_per_square_metre worst = as<amperes_per_square_metre>(0);
+  const bool stepped = std::any_of(f.coils.begin(), f.coils.end(), [](const coil_draft& c) { return c.wires.size() > 1; });
+  const auto single = sizing_currents(d, nominal.electric.primary_current.plain(), false);
+  const auto by_section = sizing_currents(d, nominal.electric.primary_current.plain(), stepped);
+  for (std::size_t i = 0; i < f.coils.size(); ++i) {
+    const auto& currents = f.coils[i].wires.size() > 1 ? by_section[i] : single[i];
+    for (std::size_t k = 0; k < f.coils[i].wires.size(); ++k) {
+      const wire_pick& p = f.coils[i].wires[k];
+      worst = std::max(worst, amperes_per_square_metre(currents[k] / (bare_area(p.wire) * static_cast<double>(p.strands))));
+    }
+  }
+  return worst;
+}
+
+double worst_regulation(const running& r) {
+  double worst = 0;
+  for (const supply::port_state& p : r.electric.ports) {
+    worst = std::max(worst, plain(p.no_load.plain()) / plain(p.on_load.plain()) - 1);
+  }
+  return worst;
+}
+
+kilograms total_mass(const draft& f) {
+  kilograms m = f.core.mass();
+  for (const coil_draft& c : f.coils) m += copper_mass(c.laid);
+  return m * 1.05;  // former, paper, varnish and leads: a twentieth (judgement)
+}
+
+attempt wind(const demand& d, const shop& s, const core_body& core, bool stepped, std::vector<working>& workings) {
+  const flux_limits flux = limits_of(d, core.choice().grade);
+  const selector_position at = nominal_position(d.primary);
+  const double start = d.limits.current_density ? std::min(plain(usual_density(rating_of(d))), plain(*d.limits.current_density))
+                                                : plain(usual_density(rating_of(d)));
+  const auto try_density = [&](double si) {
+    attempt a = settle(d, s, core, flux, as<amperes_per_square_metre>(si), stepped);
+    a.high = run(d, a.coil, at, 1 + d.mains.over_ratio);
+    test_limits(d, a);
+    workings.push_back({summary(a)});
+    return a;
+  };
+  const auto better = [](const attempt& a, const attempt& b) {
+    if (a.windable() != b.windable()) return a.windable();
+    if (!a.windable()) return a.excess() < b.excess();
+    return a.coil.fill < b.coil.fill;  // both can be wound: the one with more room, since only tight ones are retried
+  };
+  attempt best = try_density(start);
+  const bool tight = !holds(best, "window-fit") || best.coil.fill > comfortable_fill;
+  const bool starved = !holds(best, "heat") || !holds(best, "regulation") || best.volts_score > 1;
+  if (!tight && !starved) return best;
+  const double step = tight ? 1.06 : 1 / 1.06, end = tight ? 4.5e6 : 1.0e6;
+  for (double si = start * step; tight ? si <= end : si >= end; si *= step) {
+    attempt next = try_density(si);
+    const bool done = next.windable() && next.coil.fill <= comfortable_fill;
+    const bool hopeless = tight ? !holds(next, "heat") && next.coil.fill <= 1.0 : next.coil.fill > 1.0;
+    if (better(next, best)) best = std::move(next);
+    if (done || hopeless) break;
+  }
+  return best;
+}
+
+}  // namespace turnwright

@@ -1,0 +1,56 @@
+/// One core wound as well as it can be: turns, wires and temperatures at their fixed point, and what stands in the way.
+#pragma once
+
+#include <turnwright/measure/kind.hpp>
+#include <turnwright/plan/running.hpp>
+#include <turnwright/plan/turn_choice.hpp>
+#include <turnwright/plan/wire_choice.hpp>
+
+#include <string>
+#include <vector>
+
+namespace turnwright {
+
+/// A limit, what was found, and whether it holds.
+struct limit_test {
+  std::string code;     ///< of the check it belongs to
+  std::string what;     ///< "rise of the hottest winding"
+  double found = 0, bound = 0;
+  kind of = kind::ratio;
+  bool holds = true;
+  /// How far over the bound, as a ratio; 0 where it holds.
+  double excess() const;
+};
+
+struct attempt {
+  draft coil;
+  running nominal;
+  running high;         ///< highest mains, same position
+  flux_limits flux;
+  amperes_per_square_metre density;  ///< the common one that the wires were picked for
+  std::vector<limit_test> limits;
+  double volts_score = 0;            ///< worst volts error over its tolerance
+  int rounds = 0;                    ///< of turns and wires until they stood still
+  bool stood_still = false;
+  bool windable() const;
+  /// Sum of all excesses.
+  double excess() const;
+};
+
+/// Highest current density in any wire at any selector position [A/m2].
+amperes_per_square_metre worst_density(const demand& d, const draft& f, const running& nominal);
+/// Regulation of the worst secondary: (no load - on load) / on load.
+double worst_regulation(const running& r);
+/// Iron, copper and formers as far as they are known [kg].
+kilograms total_mass(const draft& f);
+
+/// A line of the search, for --workings.
+struct working {
+  std::string what;
+};
+
+/// Winds a core as well as it can be. `stepped`: a wire for each tap section.
+/// Throws `refused` for a wire the tables do not have.
+attempt wind(const demand& d, const shop& s, const core_body& core, bool stepped, std::vector<working>& workings);
+
+}  // namespace turnwright

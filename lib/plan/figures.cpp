@@ -1,0 +1,298 @@
+#include <algorithm>
+#include <cmath>
+
+#include <turnwright/measure/literals.hpp>
+#include <turnwright/measure/written.hpp>
+#include <turnwright/plan/plan.hpp>
+#include <turnwright/wire/copper.hpp>
+
+namespace turnwright {
+
+using namespace literals;
+
+namespace {
+
+// Hot spot over average of a winding, as rises: 1.10 (estimate; field solutions of such coils gave 1.06 to 1.14).
+constexpr double hot_spot_over_average = 1.10;
+
+std::string side_word(bool start) { return start ? "start" : "far"; }
+
+double quotient(volts_rms a, volts_rms b) { return plain(a.plain()) / plain(b.plain()); }
+
+class assembly {
+ public:
+  assembly(const demand& d, const shop& s, attempt a) : d_(d), s_(s), out_(d, std::move(a)), ports_(ports_of(d, out_.made.coil)) {}
+
+  design finish() {
+    out_.turns_per_volt = turns_in_use(at(), coil().n.primary).count() / plain(d_.primary.on);
+    for (std::size_t i = 0; i < coil().coils.size(); ++i) {
+      if (coil().coils[i].screen_under) out_.windings.push_back(screen(*coil().coils[i].screen_under));
+      out_.windings.push_back(winding(i));
+      add_taps_of(i);
+    }
+    if (coil().screen_outside) out_.windings.push_back(screen(*coil().screen_outside));
+    add_core();
+    add_heat();
+    add_settings();
+    add_states();
+    out_.pairs = pairs_of(d_, coil(), s_.insulation);
+    out_.leakage = leakages_of(coil());
+    out_.materials = materials_of(out_);
+    out_.tests = tests_of(out_);
+    return std::move(out_);
+  }
+
+ private:
+  const draft& coil() const { return out_.made.coil; }
+  const running& nominal() const { return out_.made.nominal; }
+  const selector_position& at() const { return out_.made.nominal.at; }
+
+  planned_winding screen(screen_kind k) const {
+    planned_winding w;
+    w.name = "screen";
+    w.screen = k;
+    w.build = k == screen_kind::safety ? wraps::safety_screen_foil : wraps::screen_foil;
+    w.wrap_under = wraps::beside_screen;
+    w.wrap_why = "either side of the foil";
+    return w;
+  }
+
+  planned_winding winding(std::size_t i) const {
+    const coil_draft& c = coil().coils[i];
+    planned_winding w;
+    w.name = c.role.name;
+    w.primary = c.role.primary;
+    w.n = total_turns(c.laid);
+    w.layers = layer_count(c.laid);
+    w.per_layer = c.laid.blocks.front().per_layer;
+    for (const laid_block& b : c.laid.blocks) w.per_layer = std::max(w.per_layer, b.per_layer);
+    w.last_layer = c.laid.blocks.back().layers.back().n;
+    w.finish_side = side_word(place_of(c.laid, w.n).at_start_side);
+    w.margin = c.margin;
+    w.margin_why = c.margin_why;
+    w.interlayer = c.interlayer;
+    w.interlayer_why = c.interlayer_why;
+    w.build = c.laid.build;
+    w.wrap_under = c.wrap_under;
+    w.wrap_why = c.wrap_why;
+    w.mean_turn = mean_turn(c.laid);
+    w.length = wire_length(c.laid, turns{0}, w.n);
+    w.mass = copper_mass(c.laid);
+    turns done{0};
+    for (const laid_block& b : c.laid.blocks) {
+      w.sections.push_back({done, done + b.of.n, {b.of.wire, b.of.overall, b.of.strands}});
+      done = done + b.of.n;
+    }
+    w.resistance_20 = resistance_20(c.laid, turns{0}, w.n);
+    w.resistance_hot = w.resistance_20 * copper::over_20(nominal().copper[i]);
+    w.loss = nominal().coil_loss[i];
+    w.rise = out_.made.high.heat.windings[i];
+    w.hot_spot = d_.limits.ambient + w.rise * hot_spot_over_average;
+    if (c.role.primary) {
+      primary_figures(w, c);
+    } else {
+      secondary_figures(w, i);
+    }
+    return w;
+  }
+
+  void primary_figures(planned_winding& w, const coil_draft& c) const {
+    const bool second = c.role.which == 1;
+    for (std::size_t k = 0; k < d_.primary.taps.size(); ++k) {
+      const turn_place p = place_of(c.laid, coil().n.primary[k]);
+      w.taps.push_back({d_.primary.taps[k], coil().n.primary[k], p.layer, side_word(p.at_start_side), !p.layer_end});
+    }
+    const volts mains = at().at;
+    const double in_use = turns_in_use(at(), coil().n.primary).count();
+    w.no_load = volts_rms{mains * (w.n.count() / in_use)};
+    w.on_load = volts_rms{nominal().electric.emf.plain() * (w.n.count() / in_use)};
+    w.current = amperes_rms{nominal().electric.primary_current.plain() * (second ? nominal().share.b : nominal().share.a)};
+    w.density = density_in(w, w.current);
+    w.one_turn = mains / in_use;
+    const std::size_t tap = second ? *at().tap_b : at().tap_a;
+    const volts own = mains * (coil().n.primary[tap].count() / in_use);
+    w.apparent = apparent_power(volts_rms{own}, w.current);
+    w.tolerance_ratio = 0;
+  }
+
+  void secondary_figures(planned_winding& w, std::size_t coil_number) const {
+    const secondary_wish& wish = d_.secondaries[coil().coils[coil_number].role.which];
+    volts no_load = 0_V, on_load = 0_V;
+    amperes most = 0_A, through = 0_A;
+    double error = 0;
+    w.apparent = 0_VA;
+    for (std::size_t k = 0; k < ports_.size(); ++k) {
+      const port_place& p = ports_[k];
+      if (p.coil != coil_number || p.inside) continue;
+      const supply::port_state& s = nominal().electric.ports[k];
+      no_load += s.no_load.plain();
+      on_load += s.on_load.plain();
+      most = std::max(most, s.current.plain());
+      through = std::max(through, current_through(k));
+      w.apparent += apparent_power(s.on_load, s.current);
+      const volts wanted = p.half == 1 ? *wish.second_half : wish.voltage;
+      const double off = plain((wish.no_load ? s.no_load : s.on_load).plain()) / plain(wanted) - 1;
+      if (std::abs(off) > std::abs(error)) error = off;
+    }
+    add_halves(w, wish, coil_number);
+    w.no_load = volts_rms{no_load};
+    w.on_load = volts_rms{on_load};
+    w.current = amperes_rms{through};
+    w.density = density_in(w, w.current);
+    w.regulation_ratio = quotient(w.no_load, w.on_load) - 1;
+    w.error_ratio = error;
+    w.tolerance_ratio = tolerance_of(wish);
+    w.one_turn = on_load / static_cast<double>(w.n.count());
+  }
+
+  // Largest current in any part of a port: with that of the taps inside it.
+  amperes current_through(std::size_t port) const {
+    amperes most = nominal().electric.ports[port].current.plain();
+    for (std::size_t m = 0; m < ports_.size(); ++m) {
+      if (ports_[m].inside == port) most = std::max(most, nominal().electric.shared_current[m].plain());
+    }
+    return most;
+  }
+
+  amperes_per_square_metre density_in(const planned_winding& w, amperes_rms a) const {
+    amperes_per_square_metre worst = as<amperes_per_square_metre>(0);
+    for (const planned_section& s : w.sections) {
+      worst = std::max(worst, amperes_per_square_metre(a.plain() / (bare_area(s.wire.wire) * static_cast<double>(s.wire.strands))));
+    }
+    return worst;
+  }
+
+  void add_halves(planned_winding& w, const secondary_wish& wish, std::size_t i) const {
+    const laid_winding& laid = coil().coils[i].laid;
+    const double hot = copper::over_20(nominal().copper[i]);
+    const auto half = [&](turns from, turns to, const supply::port_state& s, double share) {
+      const ohms r = resistance_20(laid, from, to);
+      w.halves.push_back({to - from, volts_rms{s.no_load.plain() * share}, volts_rms{s.on_load.plain() * share}, s.current, r, r * hot});
+    };
+    for (std::size_t k = 0; k < ports_.size(); ++k) {
+      if (ports_[k].coil != i || ports_[k].inside) continue;
+      const supply::port_state& s = nominal().electric.ports[k];
+      if (wish.second_half) {
+        half(ports_[k].from, ports_[k].to, s, 1.0);
+      } else if (wish.centre_tap) {
+        const turns middle{w.n.count() / 2};
+        half(turns{0}, middle, s, 0.5);
+        half(middle, w.n, s, 0.5);
+      }
+    }
+  }
+
+  // A tap with a load of its own is an element of its own, beside its host.
+  void add_taps_of(std::size_t coil_number) {
+    const planned_winding host = out_.windings.back();
+    for (std::size_t k = 0; k < ports_.size(); ++k) {
+      const port_place& p = ports_[k];
+      if (p.coil != coil_number || !p.inside) continue;
+      const secondary_wish& wish = d_.secondaries[p.secondary];
+      const laid_winding& laid = coil().coils[coil_number].laid;
+      const supply::port_state& s = nominal().electric.ports[k];
+      planned_winding w;
+      w.name = wish.name;
+      w.tap_of = host.name;
+      w.n = p.to - p.from;
+      const turn_place place = place_of(laid, p.from.count() > 0 ? p.from : p.to);
+      w.taps.push_back({s.no_load.plain(), w.n, place.layer, side_word(place.at_start_side), !place.layer_end});
+      w.sections = host.sections;
+      w.layers = place_of(laid, p.to).layer - place_of(laid, turns{p.from.count() + 1}).layer + 1;
+      w.per_layer = host.per_layer;
+      w.last_layer = w.n;
+      w.length = wire_length(laid, p.from, p.to);
+      w.mean_turn = w.length / static_cast<double>(w.n.count());
+      w.resistance_20 = resistance_20(laid, p.from, p.to);
+      w.resistance_hot = w.resistance_20 * copper::over_20(nominal().copper[coil_number]);
+      w.no_load = s.no_load;
+      w.on_load = s.on_load;
+      w.current = s.current;
+      w.density = density_in(w, w.current);
+      w.loss = 0_W;
+      w.apparent = apparent_power(s.on_load, s.current);
+      w.regulation_ratio = quotient(s.no_load, s.on_load) - 1;
+      w.error_ratio = plain((wish.no_load ? s.no_load : s.on_load).plain()) / plain(wish.voltage) - 1;
+      w.tolerance_ratio = tolerance_of(wish);
+      w.rise = host.rise;
+      w.hot_spot = host.hot_spot;
+      w.one_turn = s.on_load.plain() / static_cast<double>(w.n.count());
+      out_.windings.push_back(std::move(w));
+    }
+  }
+
+  void add_core() {
+    out_.flux_nominal = flux_at(d_, coil().core, coil().n.primary, at(), 1.0);
+    out_.flux_on_load = nominal().flux_density;
+    out_.flux_high = worst_flux(d_, coil().core, coil().n.primary);
+    out_.idle = no_load(d_, coil(), at());
+    out_.mass = total_mass(coil());
+    if (d_.prices_given) out_.cost = cost_of(d_, coil());
+  }
+
+  planned_heat heat_of(const running& r) const {
+    kelvins hottest = 0_K;
+    for (const kelvins& k : r.heat.windings) hottest = std::max(hottest, k);
+    return {d_.limits.ambient, hottest, r.heat.core, d_.limits.ambient + hottest * hot_spot_over_average};
+  }
+
+  void add_heat() {
+    out_.heat_high = heat_of(out_.made.high);
+    out_.heat_nominal = heat_of(nominal());
+    const coil_size size = outside_of(coil());
+    const lamination& l = coil().core.choice().pattern;
+    const square_metres ends = 2.0 * (size.across + 2.0 * coil().used) * l.window_length;
+    out_.surface_rule = thermal::surface_rule(out_.made.high.copper_loss + out_.made.high.core_loss, coil().core.exposed_surface() + ends);
+  }
+
+  void add_settings() {
+    for (const selector_position& p : selector_positions(d_.primary)) {
+      const running r = run_at(d_, coil(), p, 1.0, nominal().copper);
+      planned_setting s{p.at, links_of(p, d_.primary), turns_in_use(p, coil().n.primary), r.electric.primary_current,
+                        as<amperes_per_square_metre>(0), flux_at(d_, coil().core, coil().n.primary, p, 1.0), on_load(r)};
+      for (const planned_winding& w : out_.windings) {
+        if (!w.primary) continue;
+        const bool second = w.name == "primary B";
+        const std::size_t tap = second ? p.tap_b.value_or(0) : p.tap_a;
+        const amperes a = r.electric.primary_current.plain() * (second ? r.share.b : r.share.a);
+        for (const planned_section& part : w.sections) {
+          if (part.from >= coil().n.primary[tap]) continue;
+          s.density = std::max(s.density, amperes_per_square_metre(a / (bare_area(part.wire.wire) * static_cast<double>(part.wire.strands))));
+        }
+      }
+      out_.settings.push_back(std::move(s));
+    }
+  }
+
+  std::vector<std::pair<std::string, volts_rms>> on_load(const running& r) const {
+    std::vector<std::pair<std::string, volts_rms>> all;
+    for (const secondary_wish& w : d_.secondaries) {
+      volts sum = 0_V;
+      for (std::size_t k = 0; k < ports_.size(); ++k) {
+        if (d_.secondaries[ports_[k].secondary].name == w.name) sum += r.electric.ports[k].on_load.plain();
+      }
+      all.emplace_back(w.name, volts_rms{sum});
+    }
+    return all;
+  }
+
+  void add_states() {
+    const auto add = [&](const std::string& mains, double ratio) {
+      out_.states.push_back({"full", mains, on_load(run_at(d_, coil(), at(), ratio, nominal().copper))});
+    };
+    add("low", 1 - d_.mains.under_ratio);
+    add("nominal", 1.0);
+    add("high", 1 + d_.mains.over_ratio);
+  }
+
+  const demand& d_;
+  const shop& s_;
+  design out_;
+  std::vector<port_place> ports_;
+};
+
+}  // namespace
+
+design figures_of(const demand& d, const shop& s, attempt a) { return assembly(d, s, std::move(a)).finish(); }
+
+}  // namespace turnwright

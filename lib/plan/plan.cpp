@@ -1,0 +1,211 @@
+#include <turnwright/plan/plan.hpp>
+
+#include <algorithm>
+#include <functional>
+#include <limits>
+
+#include <turnwright/measure/electrics.hpp>
+#include <turnwright/measure/literals.hpp>
+#include <turnwright/measure/written.hpp>
+
+namespace turnwright {
+
+using namespace literals;
+
+namespace {
+
+core_body core_of(const demand& d, const lamination& l, metres stack, const steel& grade) {
+  return core_body({l, stack, grade, d.core.stacking_factor.value_or(usual_stacking_factor(grade)), d.core.style});
+}
+
+const steel& grade_of(const demand& d, const shop& s) {
+  return s.steels.named(d.core.grade.value_or(std::string(usual_steel)), "/core/steel");
+}
+
+bool offered(const demand& d, const lamination& l) {
+  const bool inch = l.family == pattern_family::ei_inch;
+  const bool metric = l.family == pattern_family::ei || l.family == pattern_family::ei_wide;
+  return d.wire.system == wire_system::awg ? inch : metric;
+}
+
+// Copper that the ampere-turns need at the highest density any winder would use, over the room there is: above 0.75 no
+// enamel and paper would leave it that.
+bool hopelessly_small(const demand& d, const shop& s, const core_body& core) {
+  const teslas b = d.limits.flux_density.value_or(core.choice().grade.flux_nominal);
+  const double per_volt = turns_for(volts_rms{1_V}, d.mains.frequency, b, core.net_area());
+  const double copper_m2 = 2 * plain(rating_of(d)) * per_volt / 4.5e6;
+  const former room = former_for(d.former, s.patterns, core.choice().pattern, core.choice().stack);
+  return copper_m2 > 0.75 * plain(room.winding_width) * plain(room.winding_height);
+}
+
+// A wire for each tap section only where one gauge throughout does not do.
+attempt wind_either_way(const demand& d, const shop& s, const core_body& core, std::vector<working>& workings) {
+  attempt one = wind(d, s, core, false, workings);
+  const bool sections = d.primary.taps.size() > 1 && !d.primary.fixed.wire;
+  if (one.windable() || !sections) return one;
+  attempt stepped = wind(d, s, core, true, workings);
+  return stepped.windable() || stepped.excess() < one.excess() ? stepped : one;
+}
+
+double merit(const demand& d, const attempt& a) {
+  const core_choice& c = a.coil.core.choice();
+  switch (d.goal) {
+    case aim::cost: return cost_of(d, a.coil);
+    case aim::mass: return plain(total_mass(a.coil));
+    case aim::loss: return plain(a.nominal.copper_loss + a.nominal.core_loss);
+    case aim::volume: return plain(c.pattern.width) * plain(c.pattern.height) * plain(c.stack + 2.0 * (a.coil.room.wall + a.coil.used));
+    case aim::height: return plain(c.pattern.height) + 1e-3 * plain(total_mass(a.coil));
+    case aim::regulation: return worst_regulation(a.nominal);
+  }
+  return 0;
+}
+
+// No core heavier than this one can win once the iron alone costs or weighs more than the best.
+bool beaten_by_iron_alone(const demand& d, const core_body& core, double best) {
+  if (d.goal == aim::cost) return plain(core.mass()) * plain(d.prices.steel) > best;
+  if (d.goal == aim::mass) return plain(core.mass()) > best;
+  return false;
+}
+
+attempt best_of(const demand& d, const shop& s, const std::vector<core_body>& cores, std::vector<working>& workings) {
+  std::optional<attempt> best;
+  for (const core_body& core : cores) {
+    const bool only_one = cores.size() == 1;
+    if (best && best->windable() && beaten_by_iron_alone(d, core, merit(d, *best))) break;
+    if (!only_one && &core != &cores.back() && hopelessly_small(d, s, core)) {
+      workings.push_back({core.choice().pattern.name + " x " + shown(core.choice().stack) + ": passed over, the copper alone would fill the window"});
+      continue;
+    }
+    // With the choice of cores open one gauge is kept to: the next core does what stepping would.
+    attempt a = only_one ? wind_either_way(d, s, core, workings) : wind(d, s, core, false, workings);
+    const bool better = !best || (a.windable() != best->windable() ? a.windable()
+                                  : a.windable()                   ? merit(d, a) < merit(d, *best)
+                                                                   : a.excess() < best->excess());
+    if (better) best = std::move(a);
+  }
+  return std::move(*best);
+}
+
+std::string named(const core_body& c) {
+  return c.choice().pattern.name + " with a stack of " + shown(c.choice().stack) + " of " + c.choice().grade.name;
+}
+
+std::optional<std::string> cure_by_wire(const demand& d, const shop& s, const core_body& core) {
+  demand freed = d;
+  bool fixed = freed.primary.fixed.wire.has_value() || freed.primary.fixed.strands.has_value();
+  freed.primary.fixed.wire.reset();
+  freed.primary.fixed.strands.reset();
+  for (secondary_wish& w : freed.secondaries) {
+    fixed = fixed || w.fixed.wire || w.fixed.strands;
+    w.fixed.wire.reset();
+    w.fixed.strands.reset();
+  }
+  std::vector<working> unused;
+  if (!fixed) return std::nullopt;  // every gauge has been tried already
+  const attempt a = wind_either_way(freed, s, core, unused);
+  if (!a.windable()) return std::nullopt;
+  std::string text = "other wire:";
+  for (const coil_draft& c : a.coil.coils) {
+    text += (&c == &a.coil.coils.front() ? " " : ", ") + c.role.name + " " + c.wires.front().wire.size +
+            (c.wires.front().strands > 1 ? " x " + std::to_string(c.wires.front().strands) : "");
+  }
+  return text;
+}
+
+std::optional<std::string> cure_by_stack(const demand& d, const shop& s, const core_body& core) {
+  const core_choice& c = core.choice();
+  std::vector<metres> stacks;
+  for (const metres& t : c.pattern.stacks) {
+    if (t > c.stack) stacks.push_back(t);
+  }
+  for (const double more : {1.1, 1.2, 1.35, 1.5, 1.75, 2.0}) {
+    if (c.stack * more <= 2.0 * c.pattern.tongue) stacks.push_back(as<metres>(rounded_to(plain(c.stack) * more, 3)));
+  }
+  std::sort(stacks.begin(), stacks.end());
+  std::vector<working> unused;
+  for (const metres& stack : stacks) {
+    if (wind_either_way(d, s, core_of(d, c.pattern, stack, c.grade), unused).windable()) {
+      return "a stack of " + shown(stack) + " instead of " + shown(c.stack);
+    }
+  }
+  return std::nullopt;
+}
+
+std::optional<std::string> cure_by_flux(const demand& d, const shop& s, const core_body& core) {
+  const steel& grade = core.choice().grade;
+  const teslas now = d.limits.flux_density.value_or(grade.flux_nominal);
+  const teslas knee = grade.flux_high / (1 + d.mains.over_ratio);
+  std::vector<working> unused;
+  for (const teslas& b : {grade.flux_nominal, knee}) {
+    if (b <= now) continue;
+    demand more = d;
+    more.limits.flux_density = b;
+    more.limits.flux_density_high.reset();
+    if (wind_either_way(more, s, core, unused).windable()) return "a flux density of " + shown(b) + " instead of " + shown(now);
+  }
+  return std::nullopt;
+}
+
+std::optional<std::string> cure_by_core(const demand& d, const shop& s, const core_body& core) {
+  demand open = d;
+  open.core.lamination.reset();
+  open.core.stack.reset();
+  std::vector<working> unused;
+  for (const core_body& other : candidate_cores(open, s)) {
+    if (other.mass() <= core.mass() || hopelessly_small(d, s, other)) continue;
+    if (wind_either_way(open, s, other, unused).windable()) return "the next core: " + named(other);
+  }
+  return std::nullopt;
+}
+
+// The smallest change that clears everything, tried in the order wire, stack, flux, next core.
+std::string cure_for(const demand& d, const shop& s, const core_body& core) {
+  const std::vector<std::function<std::optional<std::string>()>> ways{
+      [&] { return cure_by_wire(d, s, core); }, [&] { return cure_by_stack(d, s, core); },
+      [&] { return cure_by_flux(d, s, core); }, [&] { return cure_by_core(d, s, core); }};
+  for (const auto& way : ways) {
+    if (const auto cure = way()) return *cure;
+  }
+  return "nothing that was tried: no other wire, stack, flux or core of the tables clears it; relax the limit or what is fixed";
+}
+
+}  // namespace
+
+std::vector<core_body> candidate_cores(const demand& d, const shop& s) {
+  const steel& grade = grade_of(d, s);
+  std::vector<core_body> all;
+  const auto add = [&](const lamination& l) {
+    if (d.core.stack) {
+      all.push_back(core_of(d, l, *d.core.stack, grade));
+    } else {
+      for (const metres& stack : l.stacks) all.push_back(core_of(d, l, stack, grade));
+      if (l.stacks.empty()) all.push_back(core_of(d, l, l.tongue, grade));
+    }
+  };
+  if (d.core.lamination) {
+    add(s.patterns.named(*d.core.lamination, "/core/lamination"));
+  } else {
+    for (const lamination& l : s.patterns.all()) {
+      if (offered(d, l)) add(l);
+    }
+  }
+  std::stable_sort(all.begin(), all.end(), [](const core_body& a, const core_body& b) { return a.mass() < b.mass(); });
+  return all;
+}
+
+design plan(const demand& d, const shop& s) {
+  std::vector<working> workings;
+  attempt made = best_of(d, s, candidate_cores(d, s), workings);
+  const core_body core = made.coil.core;
+  const bool stands = made.windable();
+  design out = figures_of(d, s, std::move(made));
+  out.workings = std::move(workings);
+  out.checks = checks_of(out, stands ? "" : cure_for(d, s, core));
+  out.windable = std::none_of(out.checks.begin(), out.checks.end(), [&](const check& c) {
+    return c.weight == level::stop && std::find(d.accepted.begin(), d.accepted.end(), c.code) == d.accepted.end();
+  });
+  out.cautions = winding_cautions();
+  return out;
+}
+
+}  // namespace turnwright

@@ -1,0 +1,221 @@
+#include <turnwright/plan/running.hpp>
+
+#include <algorithm>
+#include <cmath>
+#include <stdexcept>
+
+#include <turnwright/measure/electrics.hpp>
+#include <turnwright/measure/literals.hpp>
+#include <turnwright/wire/copper.hpp>
+
+namespace turnwright {
+
+using namespace literals;
+
+namespace {
+
+std::size_t coil_index(const draft& f, bool primary, std::size_t which) {
+  for (std::size_t i = 0; i < f.coils.size(); ++i) {
+    if (f.coils[i].role.primary == primary && f.coils[i].role.which == which) return i;
+  }
+  throw std::logic_error("no such coil");
+}
+
+ohms load_of(const secondary_wish& w, int half) {
+  const volts v = half == 1 ? *w.second_half : w.voltage;
+  return v / w.current.plain();
+}
+
+metres height_of(const draft& f, const coil_draft& c) { return f.shape.width - 2.0 * c.margin; }
+
+stray_coil primary_coil(const draft& f, const selector_position& at) {
+  const coil_draft& a = f.coils[coil_index(f, true, 0)];
+  stray_piece piece_a = span_of(f, a, turns{0}, f.n.primary[at.tap_a]);
+  if (!at.tap_b) return {{piece_a}, height_of(f, a)};
+  const coil_draft& b = f.coils[coil_index(f, true, 1)];
+  stray_piece piece_b = span_of(f, b, turns{0}, f.n.primary[*at.tap_b]);
+  const primary_resistances r = primary_ohms_20(f, at);
+  const primary_share share = share_of(at, r.a, r.b);
+  const double n_a = share.a * f.n.primary[at.tap_a].count(), n_b = share.b * f.n.primary[*at.tap_b].count();
+  piece_a.share = n_a / (n_a + n_b);
+  piece_b.share = n_b / (n_a + n_b);
+  return {{piece_a, piece_b}, (height_of(f, a) + height_of(f, b)) / 2.0};
+}
+
+// What does not change while the temperatures settle.
+struct fixed_parts {
+  std::vector<port_place> ports;
+  std::vector<ohms> port_20;
+  supply::sine_network net;
+  primary_resistances primary_20;
+};
+
+fixed_parts prepare(const demand& d, const draft& f, const selector_position& at, double mains_ratio) {
+  fixed_parts p;
+  p.ports = ports_of(d, f);
+  p.primary_20 = primary_ohms_20(f, at);
+  p.net.mains = volts_rms{at.at * mains_ratio};
+  p.net.frequency = d.mains.frequency;
+  p.net.source_resistance = d.mains.source_resistance;
+  p.net.primary_turns = turns_in_use(at, f.n.primary);
+  p.net.leakage = leakage_matrix(f, at, p.ports);
+  for (const port_place& place : p.ports) {
+    p.port_20.push_back(resistance_20(f.coils[place.coil].laid, place.from, place.to));
+    p.net.ports.push_back({place.to - place.from, p.port_20.back(), load_of(d.secondaries[place.secondary], place.half), place.inside});
+  }
+  return p;
+}
+
+// Electrical state at given copper temperatures: the shunt's figures follow the EMF, which moves little.
+void settle_electric(const demand& d, const draft& f, fixed_parts& p, const std::vector<temperature>& copper, running& r) {
+  const auto hot = [&](std::size_t coil, ohms at_20) { return at_20 * copper::over_20(copper[coil]); };
+  const std::size_t a = coil_index(f, true, 0);
+  const ohms hot_a = hot(a, p.primary_20.a);
+  const ohms hot_b = r.at.tap_b ? hot(coil_index(f, true, 1), p.primary_20.b) : 0_ohm;
+  r.share = share_of(r.at, hot_a, hot_b);
+  p.net.primary_resistance = r.share.resistance;
+  for (std::size_t k = 0; k < p.ports.size(); ++k) p.net.ports[k].resistance = hot(p.ports[k].coil, p.port_20[k]);
+  volts emf = plain(r.electric.emf.plain()) > 0 ? r.electric.emf.plain() : p.net.mains.plain();
+  for (int i = 0; i < 30; ++i) {
+    r.flux_density = peak_flux_density(volts_rms{emf}, d.mains.frequency, p.net.primary_turns, f.core.net_area());
+    r.magnetising = f.core.magnetising_current(r.flux_density, p.net.primary_turns);
+    r.core_loss = f.core.loss(r.flux_density, d.mains.frequency);
+    p.net.core_loss_resistance = emf * emf / r.core_loss;
+    p.net.magnetising_reactance = emf / r.magnetising.plain();
+    r.electric = supply::solve(p.net);
+    const double change = std::abs(plain(r.electric.emf.plain()) / plain(emf) - 1);
+    emf = r.electric.emf.plain();
+    if (change < 1e-12) break;
+  }
+  r.core_loss = r.electric.core;
+  r.loss_beyond_curve = f.core.loss_beyond_curve(r.flux_density, d.mains.frequency);
+
+  r.coil_loss.assign(f.coils.size(), 0_W);
+  const amperes line = r.electric.primary_current.plain();
+  r.coil_loss[a] += line * line * r.share.a * r.share.a * hot_a;
+  if (r.at.tap_b) r.coil_loss[coil_index(f, true, 1)] += line * line * r.share.b * r.share.b * hot_b;
+  for (std::size_t k = 0; k < p.ports.size(); ++k) r.coil_loss[p.ports[k].coil] += r.electric.copper[k];
+  r.copper_loss = 0_W;
+  for (const watts& w : r.coil_loss) r.copper_loss += w;
+}
+
+// Conductivities of layer windings, unimpregnated with imperfect contact (judgement): fine wire with much paper low.
+watts_per_metre_kelvin radial_conductivity(const coil_draft& c) { return c.wires.front().wire.bare < 0.6_mm ? 0.16_W_per_mK : 0.22_W_per_mK; }
+watts_per_metre_kelvin axial_conductivity(const coil_draft& c) { return c.wires.front().wire.bare < 0.6_mm ? 0.20_W_per_mK : 0.30_W_per_mK; }
+
+thermal::heated_coil heated(const demand& d, const draft& f) {
+  const lamination& l = f.core.choice().pattern;
+  thermal::heated_coil h;
+  h.tongue = l.tongue;
+  h.stack = f.core.choice().stack;
+  h.window_width = l.window_width;
+  h.window_length = l.window_length;
+  h.former_air = 0.2_mm;
+  h.former_wall = f.room.wall;
+  h.outer_wrap = f.shape.bulge * wraps::outer;
+  h.end_space = f.room.cheek + f.coils.back().margin;
+  h.core_loss = 0_W;
+  h.core_surface = f.core.exposed_surface();
+  h.core_height = l.height;
+  h.ambient = d.limits.ambient;
+  for (const coil_draft& c : f.coils) {
+    const stray_piece span = span_of(f, c, turns{0}, total_turns(c.laid));
+    h.windings.push_back({span.inner, span.outer, height_of(f, c), 0_W, radial_conductivity(c), axial_conductivity(c)});
+  }
+  return h;
+}
+
+}  // namespace
+
+std::vector<port_place> ports_of(const demand& d, const draft& f) {
+  std::vector<port_place> all;
+  std::vector<std::size_t> first_port(d.secondaries.size());
+  for (std::size_t i = 0; i < d.secondaries.size(); ++i) {
+    const secondary_wish& w = d.secondaries[i];
+    if (w.tap_of) continue;
+    const std::size_t coil = coil_index(f, false, i);
+    const secondary_turns& n = f.n.secondaries[i];
+    first_port[i] = all.size();
+    all.push_back({i, 0, coil, turns{0}, n.first, std::nullopt});
+    if (w.second_half) all.push_back({i, 1, coil, n.first, n.first + n.second, std::nullopt});
+  }
+  for (std::size_t i = 0; i < d.secondaries.size(); ++i) {
+    const secondary_wish& w = d.secondaries[i];
+    if (!w.tap_of) continue;
+    for (std::size_t host = 0; host < d.secondaries.size(); ++host) {
+      if (d.secondaries[host].name != *w.tap_of) continue;
+      // From the centre tap into the first half; without a centre tap from the start.
+      const port_place& half = all[first_port[host]];
+      const turns tap = f.n.secondaries[i].first;
+      const bool centre = d.secondaries[host].second_half.has_value();
+      all.push_back({i, 0, half.coil, centre ? half.to - tap : turns{0}, centre ? half.to : tap, first_port[host]});
+    }
+  }
+  return all;
+}
+
+primary_resistances primary_ohms_20(const draft& f, const selector_position& at) {
+  const laid_winding& a = f.coils[coil_index(f, true, 0)].laid;
+  const ohms r_a = resistance_20(a, turns{0}, f.n.primary[at.tap_a]);
+  if (!at.tap_b) return {r_a, 0_ohm};
+  return {r_a, resistance_20(f.coils[coil_index(f, true, 1)].laid, turns{0}, f.n.primary[*at.tap_b])};
+}
+
+std::vector<henries> leakage_matrix(const draft& f, const selector_position& at, const std::vector<port_place>& ports) {
+  std::vector<stray_coil> coils{primary_coil(f, at)};
+  for (const port_place& p : ports) {
+    coils.push_back({{span_of(f, f.coils[p.coil], p.from, p.to)}, height_of(f, f.coils[p.coil])});
+  }
+  return leakage_against_first(coils, stray_space_of(f), turns_in_use(at, f.n.primary));
+}
+
+running run_at(const demand& d, const draft& f, const selector_position& at, double mains_ratio, const std::vector<temperature>& copper) {
+  running r;
+  r.at = at;
+  r.mains_ratio = mains_ratio;
+  r.copper = copper;
+  fixed_parts p = prepare(d, f, at, mains_ratio);
+  settle_electric(d, f, p, copper, r);
+  return r;
+}
+
+running run(const demand& d, const draft& f, const selector_position& at, double mains_ratio) {
+  running r;
+  r.at = at;
+  r.mains_ratio = mains_ratio;
+  r.copper.assign(f.coils.size(), d.limits.ambient + 40_K);
+  fixed_parts p = prepare(d, f, at, mains_ratio);
+  thermal::heated_coil h = heated(d, f);
+  for (r.steps = 1; r.steps <= 60; ++r.steps) {
+    settle_electric(d, f, p, r.copper, r);
+    h.core_loss = r.core_loss;
+    for (std::size_t i = 0; i < f.coils.size(); ++i) h.windings[i].loss = r.coil_loss[i];
+    r.heat = thermal::balance(h);
+    r.residual_K = 0;
+    for (std::size_t i = 0; i < f.coils.size(); ++i) {
+      // Far beyond any winding's life the figure only has to stay finite and large.
+      const kelvins rise = std::min(r.heat.windings[i], 1000_K);
+      const temperature next = d.limits.ambient + rise;
+      r.residual_K = std::max(r.residual_K, std::abs(next.value() - r.copper[i].value()));
+      r.copper[i] = next;
+    }
+    if (r.residual_K < 1e-8) break;
+  }
+  return r;
+}
+
+no_load_state no_load(const demand& d, const draft& f, const selector_position& at, double mains_ratio) {
+  const turns n = turns_in_use(at, f.n.primary);
+  const volts mains = at.at * mains_ratio;
+  no_load_state s;
+  s.flux_density = peak_flux_density(volts_rms{mains}, d.mains.frequency, n, f.core.net_area());
+  s.core_loss = f.core.loss(s.flux_density, d.mains.frequency);
+  const amperes magnetising = f.core.magnetising_current(s.flux_density, n).plain(), active = s.core_loss / mains;
+  const primary_resistances r = primary_ohms_20(f, at);
+  const amperes total = as<amperes>(std::hypot(plain(magnetising), plain(active)));
+  s.current = amperes_rms{total};
+  s.power = s.core_loss + total * total * share_of(at, r.a, r.b).resistance;
+  return s;
+}
+
+}  // namespace turnwright

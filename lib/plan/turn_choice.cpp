@@ -1,0 +1,112 @@
+#include <turnwright/plan/turn_choice.hpp>
+
+#include <algorithm>
+#include <cmath>
+#include <limits>
+
+#include <turnwright/measure/electrics.hpp>
+
+namespace turnwright {
+namespace {
+
+struct scored {
+  turn_set n;
+  double score = std::numeric_limits<double>::infinity();
+};
+
+// Taps of a primary whose highest tap has n turns.
+tap_turns taps_for(const demand& d, turns n) {
+  tap_turns taps;
+  const double per_volt = n.count() / plain(d.primary.taps.back());
+  for (const volts& v : d.primary.taps) taps.push_back(nearest(per_volt * plain(v)));
+  return taps;
+}
+
+bool keeps_flux(const demand& d, const core_body& core, const flux_limits& limits, const tap_turns& taps) {
+  const double hair = 1 + 1e-9;
+  return flux_at(d, core, taps, nominal_position(d.primary), 1.0) <= limits.nominal * hair &&
+         worst_flux(d, core, taps) <= limits.high * hair;
+}
+
+scored secondaries_for(const demand& d, const tap_turns& taps, const std::vector<load_ratio>& ratios) {
+  scored out{{taps, {}}, 0};
+  const double in_use = turns_in_use(nominal_position(d.primary), taps).count(), mains = plain(d.primary.on);
+  for (std::size_t i = 0; i < d.secondaries.size(); ++i) {
+    const secondary_wish& w = d.secondaries[i];
+    const double first = plain(w.voltage) / (mains * ratios[i].first) * in_use;
+    secondary_turns n;
+    double error = 0;
+    if (w.second_half) {
+      const double second = plain(*w.second_half) / (mains * ratios[i].second) * in_use;
+      const bool equal = plain(*w.second_half) == plain(w.voltage);
+      n.first = nearest(equal ? (first + second) / 2 : first);
+      n.second = equal ? n.first : nearest(second);
+      error = std::max(volts_error(w, n.first.count() / first), volts_error(w, n.second.count() / second));
+    } else {
+      n.first = w.centre_tap ? nearest_even(first) : nearest(first);
+      error = volts_error(w, n.first.count() / first);
+    }
+    if (w.fixed.n) {  // kept as the winder says; its volts are checked, not chosen
+      n.first = w.second_half ? turns{w.fixed.n->count() / 2} : *w.fixed.n;
+      if (w.second_half) n.second = *w.fixed.n - n.first;
+      error = 0;
+    }
+    const turns least{w.centre_tap ? 2 : 1};
+    n.first = std::max(n.first, least);
+    if (w.second_half) n.second = std::max(n.second, turns{1});
+    out.n.secondaries.push_back(n);
+    out.score = std::max(out.score, error);
+  }
+  return out;
+}
+
+}  // namespace
+
+bool is_heater(const secondary_wish& w) { return plain(w.voltage) <= 8 && !w.second_half && !w.no_load; }
+
+double tolerance_of(const secondary_wish& w) {
+  if (w.fixed.tolerance_ratio) return *w.fixed.tolerance_ratio;
+  if (w.tap_of) return 0.05;
+  return is_heater(w) ? 0.03 : 0.02;
+}
+
+double volts_off(const secondary_wish& w, double found_over_wanted) { return std::abs(found_over_wanted - 1) / tolerance_of(w); }
+
+double volts_error(const secondary_wish& w, double found_over_wanted) {
+  const bool hot_heater = is_heater(w) && found_over_wanted > 1;
+  return volts_off(w, found_over_wanted) * (hot_heater ? 2 : 1);
+}
+
+teslas flux_at(const demand& d, const core_body& core, const tap_turns& taps, const selector_position& at, double mains_ratio) {
+  return peak_flux_density(volts_rms{at.at * mains_ratio}, d.mains.frequency, turns_in_use(at, taps), core.net_area());
+}
+
+teslas worst_flux(const demand& d, const core_body& core, const tap_turns& taps) {
+  teslas worst = as<teslas>(0);
+  for (const selector_position& s : selector_positions(d.primary)) {
+    worst = std::max(worst, flux_at(d, core, taps, s, 1 + d.mains.over_ratio));
+  }
+  return worst;
+}
+
+turn_set choose_turns(const demand& d, const core_body& core, const flux_limits& limits, const std::vector<load_ratio>& ratios) {
+  if (d.primary.fixed.n) return secondaries_for(d, taps_for(d, *d.primary.fixed.n), ratios).n;
+  const volts top = d.primary.taps.back();
+  const double by_nominal = turns_for(volts_rms{top}, d.mains.frequency, limits.nominal, core.net_area());
+  const double by_high = turns_for(volts_rms{top * (1 + d.mains.over_ratio)}, d.mains.frequency, limits.high, core.net_area());
+  const int fewest = std::max(1, rounded_up(std::max(by_nominal, by_high)).count());
+  scored best;
+  for (const double stretch : {1.06, 1.25}) {
+    for (int n = fewest; n <= std::max(fewest + 3, static_cast<int>(fewest * stretch)); ++n) {
+      const tap_turns taps = taps_for(d, turns{n});
+      if (!keeps_flux(d, core, limits, taps)) continue;
+      scored here = secondaries_for(d, taps, ratios);
+      here.score += static_cast<double>(n) / fewest - 1;  // a turn more has to earn its copper
+      if (here.score < best.score) best = std::move(here);
+    }
+    if (best.score <= 1) break;
+  }
+  return best.n;
+}
+
+}  // namespace turnwright

@@ -1,0 +1,131 @@
+#include <turnwright/plan/wire_choice.hpp>
+
+#include <algorithm>
+#include <cmath>
+
+#include <turnwright/measure/literals.hpp>
+#include <turnwright/remark/wording.hpp>
+
+namespace turnwright {
+
+using namespace literals;
+
+namespace {
+
+const winding_wishes& wishes_of(const demand& d, const coil_role& r) {
+  return r.primary ? d.primary.fixed : d.secondaries[r.which].fixed;
+}
+
+std::string grade_of(const demand& d) { return d.wire.grade; }
+
+wire_pick fixed_wire(const demand& d, const shop& s, const coil_role& r, const std::string& size) {
+  const std::string where = r.primary ? "/primary/wire" : "/secondaries/" + std::to_string(r.which) + "/wire";
+  const looked_up_gauge found = s.wire.look_up(size, where);
+  const auto over = overall(found.wire, grade_of(d));
+  if (!found.exact || !over) {
+    throw refused(wording::other("unknown-name", where, wording::quoted(size),
+                                 "a size of the wire table with enamel of grade " + grade_of(d),
+                                 "the nearest is " + wording::quoted(found.wire.size)));
+  }
+  return {found.wire, *over, wishes_of(d, r).strands.value_or(1)};
+}
+
+wire_pick chosen_wire(const demand& d, const shop& s, const coil_role& r, metres tongue, square_metres area) {
+  const metres stiffest = std::min(1.25_mm, tongue / 20.0);
+  const auto wished = wishes_of(d, r).strands;
+  wire_pick best;
+  for (int strands = wished.value_or(1); strands <= wished.value_or(8); ++strands) {
+    const gauge* g = s.wire.at_least(d.wire.system, grade_of(d), area / static_cast<double>(strands));
+    if (!g) continue;
+    best = {*g, *overall(*g, grade_of(d)), strands};
+    if (g->bare <= stiffest) return best;
+  }
+  if (best.wire.size.empty()) {
+    throw refused(wording::other("no-wire", "/secondaries", "a current that no wire of the table carries",
+                                 "currents that up to eight strands of the table can carry"));
+  }
+  return best;
+}
+
+// Current of the first half with that of every tap inside it: they flow together, in phase at worst.
+amperes with_taps(const demand& d, const secondary_wish& w) {
+  amperes sum = w.current.plain();
+  for (const secondary_wish& t : d.secondaries) {
+    if (t.tap_of == w.name) sum += t.current.plain();
+  }
+  return sum;
+}
+
+}  // namespace
+
+std::vector<coil_amperes> sizing_currents(const demand& d, amperes line_at_nominal, bool stepped) {
+  const auto positions = selector_positions(d.primary);
+  std::vector<coil_amperes> all;
+  for (const coil_role& r : coils_of(d)) {
+    if (!r.primary) {
+      all.push_back({with_taps(d, d.secondaries[r.which])});
+      continue;
+    }
+    coil_amperes sections(d.primary.taps.size(), 0_A);
+    for (const selector_position& p : positions) {
+      const amperes line = line_at_nominal * (plain(d.primary.on) / plain(p.at));
+      const primary_share share = share_of(p, 1_ohm, 1_ohm);
+      const std::size_t tap = r.which == 0 ? p.tap_a : p.tap_b.value_or(0);
+      const amperes here = line * (r.which == 0 ? share.a : share.b);
+      for (std::size_t k = 0; k <= tap; ++k) sections[k] = std::max(sections[k], here);
+    }
+    all.push_back(stepped ? sections : coil_amperes{sections.front()});
+  }
+  return all;
+}
+
+volt_amperes rating_of(const demand& d) {
+  volt_amperes sum = 0_VA;
+  for (const secondary_wish& w : d.secondaries) {
+    const volts both = w.second_half ? w.voltage + *w.second_half : w.voltage;
+    sum += apparent_power(volts_rms{both}, w.current);
+  }
+  return sum;
+}
+
+amperes_per_square_metre usual_density(volt_amperes rating) {
+  return as<amperes_per_square_metre>(std::clamp(5.2 * std::pow(std::max(1.0, plain(rating)), -1.0 / 7), 1.8, 4.5) * 1e6);
+}
+
+std::vector<double> density_weights(const draft& f) {
+  std::vector<double> weights;
+  for (const coil_draft& c : f.coils) {
+    double copper_m2 = 0;
+    for (const laid_block& b : c.laid.blocks) {
+      copper_m2 += b.of.n.count() * b.of.strands * plain(bare_area(b.of.wire));
+    }
+    const double room_m2 = plain(c.laid.build) * plain(f.shape.width);
+    weights.push_back(1 / std::sqrt(plain(mean_turn(c.laid)) * copper_m2 / room_m2));
+  }
+  double mean = 0;
+  for (const double w : weights) mean += w / static_cast<double>(weights.size());
+  for (double& w : weights) w = std::clamp(w / mean, 0.85, 1.18);
+  return weights;
+}
+
+wire_set pick_wires(const demand& d, const shop& s, metres tongue, const std::vector<coil_amperes>& currents,
+                    amperes_per_square_metre density, const std::vector<double>& weights) {
+  wire_set all;
+  const auto roles = coils_of(d);
+  for (std::size_t i = 0; i < roles.size(); ++i) {
+    const winding_wishes& wishes = wishes_of(d, roles[i]);
+    std::vector<wire_pick> picks;
+    for (const amperes& a : currents[i]) {
+      picks.push_back(wishes.wire ? fixed_wire(d, s, roles[i], *wishes.wire)
+                                  : chosen_wire(d, s, roles[i], tongue, a / (density * weights[i])));
+    }
+    const bool all_same = std::all_of(picks.begin(), picks.end(), [&](const wire_pick& p) {
+      return p.wire.size == picks.front().wire.size && p.strands == picks.front().strands;
+    });
+    if (all_same) picks.resize(1);
+    all.push_back(std::move(picks));
+  }
+  return all;
+}
+
+}  // namespace turnwright

@@ -1,0 +1,28 @@
+/// Reports in plain text for a person at the bench.
+#pragma once
+
+#include <turnwright/plan/design.hpp>
+#include <turnwright/plan/shop.hpp>
+
+#include <optional>
+#include <string>
+
+namespace turnwright {
+
+/// The plan: core, fit, winding table, taps, volts at every position, losses and heat, checks, assumptions, cautions.
+/// `workings`: the rejected choices and residuals as well.
+std::string report_of(const design& p, bool workings);
+
+/// A wire with what it carries and its nearest sizes in the other systems.
+std::string report_of(const looked_up_gauge& g, const shop& s);
+/// A lamination with its stacks.
+std::string report_of(const lamination& l);
+/// A steel with its curves; `at` adds the figures at one point.
+std::string report_of(const steel& s, const std::optional<teslas>& flux_density, hertz frequency);
+
+/// The whole tables, a line each.
+std::string list_of_wires(const shop& s);
+std::string list_of_cores(const shop& s);
+std::string list_of_steels(const shop& s);
+
+}  // namespace turnwright
