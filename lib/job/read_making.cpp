@@ -3,6 +3,7 @@
 #include <turnwright/measure/literals.hpp>
 #include <turnwright/measure/written.hpp>
 #include <turnwright/plan/plan.hpp>
+#include <turnwright/plan/turn_choice.hpp>
 
 #include "sections.hpp"
 
@@ -20,24 +21,31 @@ std::vector<std::string> winding_names(const demand& d) {
   return names;
 }
 
-// Fine wire on a flat bed, heavy wire outside; a heater that rides on a winding lies next to it.
+// HT on the flat bed over the primary, then what feeds heaters, heavier wire further out, small windings outermost.
+int usual_rank(const secondary_wish& s) {
+  const volts whole = s.second_half ? s.voltage + *s.second_half : s.voltage;
+  return whole > 100_V ? 0 : is_heater(s) ? 1 : 2;
+}
+
 std::vector<std::string> usual_order(const demand& d) {
   std::vector<const secondary_wish*> list;
   for (const secondary_wish& s : d.secondaries) {
     if (!s.tap_of) list.push_back(&s);
   }
-  std::stable_sort(list.begin(), list.end(), [](const auto* a, const auto* b) { return a->current < b->current; });
+  std::stable_sort(list.begin(), list.end(), [](const auto* a, const auto* b) {
+    return usual_rank(*a) != usual_rank(*b) ? usual_rank(*a) < usual_rank(*b) : a->current < b->current;
+  });
   std::vector<std::string> order = winding_names(d);
   order.resize(d.primary.two_windings ? 2 : 1);
-  const auto riders_of = [&](const std::string& host) {
-    for (const secondary_wish* s : list) {
-      if (s->floats_on == host) order.push_back(s->name);
-    }
+  const auto follows_host = [&](const secondary_wish& s) {  // a heater that rides on a winding lies next to it
+    return s.floats_on && std::any_of(list.begin(), list.end(), [&](const auto* o) { return o->name == *s.floats_on && !o->floats_on; });
   };
   for (const secondary_wish* s : list) {
-    if (s->floats_on && std::any_of(list.begin(), list.end(), [&](const auto* o) { return o->name == *s->floats_on && !o->floats_on; })) continue;
+    if (follows_host(*s)) continue;
     order.push_back(s->name);
-    riders_of(s->name);
+    for (const secondary_wish* rider : list) {
+      if (follows_host(*rider) && *rider->floats_on == s->name) order.push_back(rider->name);
+    }
   }
   return order;
 }
@@ -79,7 +87,7 @@ void read_screens_and_order(reading_desk& desk, page& root) {
     desk.out.order = usual_order(desk.out);
     std::string text;
     for (const std::string& name : desk.out.order) text += (text.empty() ? "" : ", ") + name;
-    desk.assume("/order", text, "from the core outwards: primary, fine wire, heavy wire");
+    desk.assume("/order", text, "from the core outwards: HT on the primary, heaters over it, small windings outermost");
   }
   root.each("screens", [&](const json& node, const std::string& where) {
     if (!node.is_object()) {

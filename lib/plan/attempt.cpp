@@ -60,19 +60,22 @@ struct settled_round {
   double score;
 };
 
-// Turns and wires at one density until both stand still. They are whole numbers, so they may also go round in a ring:
-// then the member of the ring whose volts are best is kept.
+// Turns and wires at one density until both stand still. They are whole numbers, so left alone they may wander: after
+// three rounds the primary and the sizing currents are held, and only the secondaries still follow their volts. Those may
+// end in a ring; then the member whose volts are best is kept.
 attempt settle(const demand& d, const shop& s, const core_body& core, const flux_limits& flux,
                amperes_per_square_metre density, bool stepped) {
+  constexpr int free_rounds = 3, most_rounds = 12;
   std::vector<load_ratio> ratios = first_guess(d);
   std::vector<double> weights(coils_of(d).size(), 1.0);
   amperes line = as<amperes>(1.15 * plain(rating_of(d)) / plain(d.primary.on));
   const selector_position at = nominal_position(d.primary);
   std::vector<settled_round> seen;
   attempt out{draft{core, {}, {}, {}, {}, {}, 0_m, 0, false}, {}, {}, flux, density, {}, 0, 0, false};
-  for (int round = 1; round <= 8 && !out.stood_still; ++round) {
-    out.rounds = round;
-    const turn_set n = choose_turns(d, core, flux, ratios);
+  while (out.rounds < most_rounds) {
+    ++out.rounds;
+    const bool held = out.rounds > free_rounds;
+    const turn_set n = held ? choose_secondaries(d, seen.back().f.n.primary, ratios) : choose_turns(d, core, flux, ratios);
     const wire_set wires = pick_wires(d, s, core.choice().pattern.tongue, sizing_currents(d, line, stepped), density, weights);
     const auto again = std::find_if(seen.begin(), seen.end(), [&](const settled_round& o) { return o.f.n == n && same_wires(o.wires, wires); });
     if (again != seen.end()) {
@@ -83,8 +86,10 @@ attempt settle(const demand& d, const shop& s, const core_body& core, const flux
     draft f = lay_out(d, s, core, n, wires);
     running r = run(d, f, at, 1.0);
     ratios = ratios_of(d, f, r);
-    line = r.electric.primary_current.plain();
-    weights = density_weights(f);
+    if (!held) {
+      line = r.electric.primary_current.plain();
+      weights = density_weights(f);
+    }
     const double score = score_of(d, f, r);
     seen.push_back({std::move(f), std::move(r), wires, score});
   }
@@ -161,6 +166,8 @@ double limit_test::excess() const {
   return found > bound ? found / bound - 1 : bound / found - 1;
 }
 
+bool attempt::comfortable() const { return windable() && coil.fill <= comfortable_fill; }
+
 bool attempt::windable() const {
   return volts_score <= 1 + 1e-9 && std::all_of(limits.begin(), limits.end(), [](const limit_test& t) { return t.holds; });
 }
@@ -222,9 +229,11 @@ attempt wind(const demand& d, const shop& s, const core_body& core, bool stepped
   const bool starved = !holds(best, "heat") || !holds(best, "regulation") || best.volts_score > 1;
   if (!tight && !starved) return best;
   const double step = tight ? 1.06 : 1 / 1.06, end = tight ? 4.5e6 : 1.0e6;
+  // Copper shrinks no faster than the density grows, and insulation not at all.
+  if (tight && best.coil.fill * start / end > 1.0) return best;
   for (double si = start * step; tight ? si <= end : si >= end; si *= step) {
     attempt next = try_density(si);
-    const bool done = next.windable() && next.coil.fill <= comfortable_fill;
+    const bool done = next.comfortable();
     const bool hopeless = tight ? !holds(next, "heat") && next.coil.fill <= 1.0 : next.coil.fill > 1.0;
     if (better(next, best)) best = std::move(next);
     if (done || hopeless) break;

@@ -32,7 +32,10 @@ struct attempt {
   double volts_score = 0;            ///< worst volts error over its tolerance
   int rounds = 0;                    ///< of turns and wires until they stood still
   bool stood_still = false;
+  /// Whether every limit holds and every winding's volts are within its tolerance.
   bool windable() const;
+  /// Windable, with room for leads and the last wrap: build no more than 92 % of the height (common practice).
+  bool comfortable() const;
   /// Sum of all excesses.
   double excess() const;
 };

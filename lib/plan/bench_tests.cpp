@@ -12,7 +12,7 @@ std::string coded(const std::string& name) {
 }
 
 void add_resistances(const planned_winding& w, std::vector<planned_test>& all) {
-  const std::string code = "dc-" + coded(w.name), text = "DC resistance of " + w.name + " at 20 degC, ";
+  const std::string code = "dc-" + coded(w.name), text = "ohms of " + w.name + " at 20 degC, ";
   if (w.halves.size() == 2) {
     all.push_back({code + "-1", text + "start to centre tap", plain(w.halves[0].resistance_20), kind::resistance, 0.1});
     all.push_back({code + "-2", text + "centre tap to finish", plain(w.halves[1].resistance_20), kind::resistance, 0.1});
@@ -34,7 +34,7 @@ std::vector<planned_test> tests_of(const design& p) {
   all.push_back({"no-load-power", "power at " + mains + ", secondaries open", plain(p.idle.power), kind::power, 0.35});
   for (const planned_winding& w : p.windings) {
     if (w.screen || w.primary) continue;
-    all.push_back({"open-" + coded(w.name), "volts of " + w.name + " without load, " + mains + " on the primary", plain(w.no_load.plain()),
+    all.push_back({"open-" + coded(w.name), "volts of " + w.name + " unloaded, " + mains + " on the primary", plain(w.no_load.plain()),
                    kind::voltage, 0.01});
   }
   for (const planned_pair& pair : p.pairs) {

@@ -67,22 +67,29 @@ bool beaten_by_iron_alone(const demand& d, const core_body& core, double best) {
   return false;
 }
 
+// 2: with room to spare; 1: can be wound; 0: cannot.
+int rank(const attempt& a) { return a.comfortable() ? 2 : a.windable() ? 1 : 0; }
+
+bool better(const demand& d, const attempt& a, const attempt& b) {
+  if (rank(a) != rank(b)) return rank(a) > rank(b);
+  return a.windable() ? merit(d, a) < merit(d, b) : a.excess() < b.excess();
+}
+
 attempt best_of(const demand& d, const shop& s, const std::vector<core_body>& cores, std::vector<working>& workings) {
+  if (cores.size() == 1) return wind_either_way(d, s, cores.front(), workings);
   std::optional<attempt> best;
+  int passed_over = 0;
   for (const core_body& core : cores) {
-    const bool only_one = cores.size() == 1;
-    if (best && best->windable() && beaten_by_iron_alone(d, core, merit(d, *best))) break;
-    if (!only_one && &core != &cores.back() && hopelessly_small(d, s, core)) {
-      workings.push_back({core.choice().pattern.name + " x " + shown(core.choice().stack) + ": passed over, the copper alone would fill the window"});
+    if (best && best->comfortable() && beaten_by_iron_alone(d, core, merit(d, *best))) break;
+    if (&core != &cores.back() && hopelessly_small(d, s, core)) {
+      ++passed_over;
       continue;
     }
     // With the choice of cores open one gauge is kept to: the next core does what stepping would.
-    attempt a = only_one ? wind_either_way(d, s, core, workings) : wind(d, s, core, false, workings);
-    const bool better = !best || (a.windable() != best->windable() ? a.windable()
-                                  : a.windable()                   ? merit(d, a) < merit(d, *best)
-                                                                   : a.excess() < best->excess());
-    if (better) best = std::move(a);
+    attempt a = wind(d, s, core, false, workings);
+    if (!best || better(d, a, *best)) best = std::move(a);
   }
+  workings.push_back({std::to_string(passed_over) + " cores passed over: their copper alone would fill the window"});
   return std::move(*best);
 }
 

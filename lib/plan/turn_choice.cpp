@@ -109,4 +109,8 @@ turn_set choose_turns(const demand& d, const core_body& core, const flux_limits&
   return best.n;
 }
 
+turn_set choose_secondaries(const demand& d, const tap_turns& primary, const std::vector<load_ratio>& ratios) {
+  return secondaries_for(d, primary, ratios).n;
+}
+
 }  // namespace turnwright

@@ -38,5 +38,7 @@ teslas worst_flux(const demand& d, const core_body& core, const tap_turns& taps)
 /// The least worst volts error over all whole numbers of primary turns from the fewest that the flux allows to 6 % more,
 /// to 25 % more where that leaves a tolerance broken. Turns that the job fixes are kept.
 turn_set choose_turns(const demand& d, const core_body& core, const flux_limits& limits, const std::vector<load_ratio>& ratios);
+/// The secondaries alone, for a primary that stands.
+turn_set choose_secondaries(const demand& d, const tap_turns& primary, const std::vector<load_ratio>& ratios);
 
 }  // namespace turnwright

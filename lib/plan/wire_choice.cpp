@@ -2,6 +2,7 @@
 
 #include <algorithm>
 #include <cmath>
+#include <numbers>
 
 #include <turnwright/measure/literals.hpp>
 #include <turnwright/remark/wording.hpp>
@@ -33,9 +34,10 @@ wire_pick fixed_wire(const demand& d, const shop& s, const coil_role& r, const s
 wire_pick chosen_wire(const demand& d, const shop& s, const coil_role& r, metres tongue, square_metres area) {
   const metres stiffest = std::min(1.25_mm, tongue / 20.0);
   const auto wished = wishes_of(d, r).strands;
+  const square_metres frailest = std::numbers::pi / 4 * (0.1_mm * 0.1_mm);  // finer wire breaks in a hand winder's fingers (practice)
   wire_pick best;
   for (int strands = wished.value_or(1); strands <= wished.value_or(8); ++strands) {
-    const gauge* g = s.wire.at_least(d.wire.system, grade_of(d), area / static_cast<double>(strands));
+    const gauge* g = s.wire.at_least(d.wire.system, grade_of(d), std::max(square_metres(area / static_cast<double>(strands)), frailest));
     if (!g) continue;
     best = {*g, *overall(*g, grade_of(d)), strands};
     if (g->bare <= stiffest) return best;
@@ -105,6 +107,15 @@ std::vector<double> density_weights(const draft& f) {
   double mean = 0;
   for (const double w : weights) mean += w / static_cast<double>(weights.size());
   for (double& w : weights) w = std::clamp(w / mean, 0.85, 1.18);
+  // Two equal primaries are wound of one wire.
+  double primaries = 0;
+  int count = 0;
+  for (std::size_t i = 0; i < f.coils.size(); ++i) {
+    if (f.coils[i].role.primary) primaries += weights[i], ++count;
+  }
+  for (std::size_t i = 0; i < f.coils.size(); ++i) {
+    if (f.coils[i].role.primary) weights[i] = primaries / count;
+  }
   return weights;
 }
 

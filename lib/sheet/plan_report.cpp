@@ -64,7 +64,7 @@ std::string core_part(const design& p) {
 }
 
 std::string winding_table(const design& p) {
-  text_table t({"winding", "turns", "<wire", "over mm", "layers x turns", "last", "margin mm", "paper mm", "wrap under", "build mm"});
+  text_table t({"winding", "turns", "<wire", "over", "layers", "last", "margin", "paper", "wrap", "build"});
   for (const planned_winding& w : p.windings) {
     if (w.screen) {
       t.add({"screen", "1 open", std::string("foil ") + shown(w.build, 2), "", "", "", "", "", mm(w.wrap_under, 2), mm(w.build, 2)});
@@ -81,7 +81,9 @@ std::string winding_table(const design& p) {
       }
     }
   }
-  return "Winding, from the core outwards; all in one direction, every start at the same end\n" + t.text() + "\n";
+  return "Winding, from the core outwards; all in one direction, every start at the same end (mm)\n" + t.text() +
+         wrapped("over: diameter over the enamel; layers x turns in each, and in the last; margin at each end; paper between layers; wrap "
+                 "under the winding; build without bulge", "  ") + "\n";
 }
 
 std::string ends_part(const design& p) {
@@ -108,7 +110,7 @@ std::string ends_part(const design& p) {
 }
 
 std::string electric_table(const design& p) {
-  text_table t({"winding", "ohm 20 degC", "ohm hot", "V no load", "V on load", "off", "A rms", "A/mm2", "loss W", "rise K", "wire m", "kg"});
+  text_table t({"winding", "ohm cold", "ohm hot", "V open", "V loaded", "off", "A rms", "A/mm2", "W", "K", "m", "kg"});
   for (const planned_winding& w : p.windings) {
     if (w.screen) continue;
     const auto ohm = [](ohms r) { return number(plain(r), 3); };
@@ -121,7 +123,9 @@ std::string electric_table(const design& p) {
              volts_text(half.on_load), "", number(plain(half.current.plain()), 3)});
     }
   }
-  return "Electrical, full load, " + written(p.wanted.primary.on) + ", hot (rise at the highest mains)\n" + t.text() + "\n";
+  return "Electrical at full load, " + written(p.wanted.primary.on) + "\n" + t.text() +
+         wrapped("ohm cold at 20 degC; volts without and with load; off: from what was wanted; W lost in it; K: its average rise at the highest "
+                 "mains; m and kg of wire", "  ") + "\n";
 }
 
 std::string settings_part(const design& p) {
@@ -188,7 +192,7 @@ std::string materials_part(const design& p) {
 }
 
 std::string tests_part(const design& p) {
-  text_table t({"bench test", "<what", "expected", "within"});
+  text_table t({"code", "<measure", "expected", "within"});
   for (const planned_test& test : p.tests) {
     if (test.code.starts_with("flash-")) continue;  // they stand in the insulation table
     t.add({test.code, test.text, shown_plain(test.expected_si, test.of), percent(test.tolerance_ratio, 0)});
