@@ -33,9 +33,9 @@ json core_json(const design& p) {
           {"sources", {{"lamination", c.pattern.source}, {"steel", c.grade.source}}}};
 }
 
-json wire_json(const wire_pick& w, const std::string& grade) {
+json wire_json(const wire_pick& w) {
   return {{"size", w.wire.size}, {"bare_mm", in_mm(w.wire.bare)}, {"overall_mm", in_mm(w.overall)}, {"strands", w.strands},
-          {"grade", grade}, {"standing", word_of(w.wire.known_how)}, {"source", w.wire.source}};
+          {"grade", w.grade}, {"standing", word_of(w.wire.known_how)}, {"source", w.wire.source}};
 }
 
 json tap_json(const planned_tap& t) {
@@ -68,7 +68,7 @@ void add_place(json& j, const planned_winding& w) {
   j["build_mm"] = in_mm(w.build);
 }
 
-json winding_json(const planned_winding& w, const std::string& grade) {
+json winding_json(const planned_winding& w) {
   if (w.screen) return screen_json(w);
   json j{{"name", w.name}};
   if (w.tap_of) j["tap_of"] = *w.tap_of;
@@ -77,11 +77,11 @@ json winding_json(const planned_winding& w, const std::string& grade) {
     j["taps"] = json::array();
     for (const planned_tap& t : w.taps) j["taps"].push_back(tap_json(t));
   }
-  j["wire"] = wire_json(w.sections.front().wire, grade);
+  j["wire"] = wire_json(w.sections.front().wire);
   if (w.sections.size() > 1) {
     j["sections"] = json::array();
     for (const planned_section& s : w.sections) {
-      j["sections"].push_back({{"from_turn", s.from.count()}, {"to_turn", s.to.count()}, {"wire", wire_json(s.wire, grade)}});
+      j["sections"].push_back({{"from_turn", s.from.count()}, {"to_turn", s.to.count()}, {"wire", wire_json(s.wire)}});
     }
   }
   add_place(j, w);
@@ -234,7 +234,7 @@ std::string json_of(const design& p) {
          {"volts_per_turn_V", figure(1 / p.turns_per_volt)},
          {"core", core_json(p)}};
   j["windings"] = json::array();
-  for (const planned_winding& w : p.windings) j["windings"].push_back(winding_json(w, p.wanted.wire.grade));
+  for (const planned_winding& w : p.windings) j["windings"].push_back(winding_json(w));
   add_lists(j, p);
   add_power(j, p);
   j["thermal"] = heat_json(p.heat_high);

@@ -57,7 +57,8 @@ void read_frequency(reading_desk& desk, page& mains) {
     const std::size_t unit = upper.find_first_not_of("0123456789. ");
     lower = text->substr(0, dash) + (unit == std::string::npos ? "" : " " + upper.substr(unit));
   }
-  const auto f = mains.quantity_in<hertz>(lower, where, "16 Hz", "450 Hz"), g = mains.quantity_in<hertz>(upper, where, "16 Hz", "450 Hz");
+  const auto f = mains.quantity_in<hertz>(lower, where, "16 Hz", "450 Hz");
+  const auto g = f && upper != lower ? mains.quantity_in<hertz>(upper, where, "16 Hz", "450 Hz") : f;
   if (f && g) desk.out.mains.frequency = std::min(*f, *g);
 }
 
@@ -131,6 +132,7 @@ void read_primary(reading_desk& desk, page& root, const std::optional<volts>& wa
     if (wall) p.on = *wall;
     return;
   }
+  const std::size_t faults_before = desk.faults.size();
   const json* taps = primary->value("taps");
   const json* two = primary->value("windings");
   if (taps && two) {
@@ -147,7 +149,7 @@ void read_primary(reading_desk& desk, page& root, const std::optional<volts>& wa
   const auto on = primary->quantity<volts>("on", "10 V", "1000 V");
   p.fixed = read_wishes(desk, *primary);
   primary->finish();
-  if (p.taps.empty()) return;
+  if (p.taps.empty() || desk.faults.size() > faults_before) return;  // nothing to be said of `on` before the taps are right
   if (!on) return choose_on(desk, wall, "/primary/on");
   p.on = *on;
   if (!has_nominal_position(p)) {
@@ -253,9 +255,9 @@ winding_wishes read_wishes(reading_desk& desk, page& winding) {
   if (const auto wire = winding.text("wire")) {
     try {
       const looked_up_gauge found = desk.tools.wire.look_up(*wire, winding.place("wire"));
-      if (!found.exact || !overall(found.wire, desk.out.wire.grade)) {
+      if (!found.exact || !film_of(found.wire, desk.out.wire.grade)) {
         desk.faults.push_back(wording::other("unknown-name", winding.place("wire"), wording::quoted(*wire),
-                                             "a size of the table with enamel of grade " + desk.out.wire.grade,
+                                             "a size of the table whose enamel is known",
                                              "the nearest size is " + wording::quoted(found.wire.size)));
       }
       w.wire = *wire;

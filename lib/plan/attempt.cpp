@@ -27,7 +27,8 @@ std::vector<load_ratio> ratios_of(const demand& d, const draft& f, const running
   const auto ports = ports_of(d, f);
   for (std::size_t k = 0; k < ports.size(); ++k) {
     if (d.secondaries[ports[k].secondary].no_load) continue;
-    const double ratio = plain(r.electric.ports[k].on_load.plain()) / plain(r.electric.ports[k].no_load.plain());
+    // Where half the volts are lost the core is hopeless; more turns would only lose more.
+    const double ratio = std::max(0.5, plain(r.electric.ports[k].on_load.plain()) / plain(r.electric.ports[k].no_load.plain()));
     (ports[k].half == 0 ? all[ports[k].secondary].first : all[ports[k].secondary].second) = ratio;
   }
   return all;

@@ -30,6 +30,7 @@ struct wire_pick {
   gauge wire;
   metres overall;
   int strands = 1;
+  std::string grade;  ///< of the enamel; another than the job's where the table has no such film for this size
 };
 
 /// A winding that takes room of its own: a primary (which = 0 or 1) or the secondary of that number.

@@ -80,7 +80,7 @@ class assembly {
     w.mass = copper_mass(c.laid);
     turns done{0};
     for (const laid_block& b : c.laid.blocks) {
-      w.sections.push_back({done, done + b.of.n, {b.of.wire, b.of.overall, b.of.strands}});
+      w.sections.push_back({done, done + b.of.n, c.wires[w.sections.size()]});
       done = done + b.of.n;
     }
     w.resistance_20 = resistance_20(c.laid, turns{0}, w.n);

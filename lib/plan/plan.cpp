@@ -28,6 +28,23 @@ bool offered(const demand& d, const lamination& l) {
   return d.wire.system == wire_system::awg ? inch : metric;
 }
 
+// The wanted patterns in the wanted stack, else in each of their usual ones; lightest first.
+std::vector<core_body> cores_where(const demand& d, const shop& s, const std::function<bool(const lamination&)>& wanted) {
+  const steel& grade = grade_of(d, s);
+  std::vector<core_body> all;
+  for (const lamination& l : s.patterns.all()) {
+    if (!wanted(l)) continue;
+    if (d.core.stack) {
+      all.push_back(core_of(d, l, *d.core.stack, grade));
+      continue;
+    }
+    for (const metres& stack : l.stacks) all.push_back(core_of(d, l, stack, grade));
+    if (l.stacks.empty()) all.push_back(core_of(d, l, l.tongue, grade));
+  }
+  std::stable_sort(all.begin(), all.end(), [](const core_body& a, const core_body& b) { return a.mass() < b.mass(); });
+  return all;
+}
+
 // Copper that the ampere-turns need at the highest density any winder would use, over the room there is: above 0.75 no
 // enamel and paper would leave it that.
 bool hopelessly_small(const demand& d, const shop& s, const core_body& core) {
@@ -153,13 +170,19 @@ std::optional<std::string> cure_by_flux(const demand& d, const shop& s, const co
   return std::nullopt;
 }
 
+// Every shell pattern with its stacks, lightest first, whatever the wire system.
+std::vector<core_body> cores_of_all_families(const demand& d, const shop& s) {
+  return cores_where(d, s, [](const lamination& l) { return is_shell(l); });
+}
+
 std::optional<std::string> cure_by_core(const demand& d, const shop& s, const core_body& core) {
   demand open = d;
   open.core.lamination.reset();
   open.core.stack.reset();
   std::vector<working> unused;
-  for (const core_body& other : candidate_cores(open, s)) {
-    if (other.mass() <= core.mass() || hopelessly_small(d, s, other)) continue;
+  for (const core_body& other : cores_of_all_families(open, s)) {
+    const bool same_family = !d.core.lamination || other.choice().pattern.family == core.choice().pattern.family;
+    if (!same_family || other.mass() <= core.mass() || hopelessly_small(d, s, other)) continue;
     if (wind_either_way(open, s, other, unused).windable()) return "the next core: " + named(other);
   }
   return std::nullopt;
@@ -179,25 +202,9 @@ std::string cure_for(const demand& d, const shop& s, const core_body& core) {
 }  // namespace
 
 std::vector<core_body> candidate_cores(const demand& d, const shop& s) {
-  const steel& grade = grade_of(d, s);
-  std::vector<core_body> all;
-  const auto add = [&](const lamination& l) {
-    if (d.core.stack) {
-      all.push_back(core_of(d, l, *d.core.stack, grade));
-    } else {
-      for (const metres& stack : l.stacks) all.push_back(core_of(d, l, stack, grade));
-      if (l.stacks.empty()) all.push_back(core_of(d, l, l.tongue, grade));
-    }
-  };
-  if (d.core.lamination) {
-    add(s.patterns.named(*d.core.lamination, "/core/lamination"));
-  } else {
-    for (const lamination& l : s.patterns.all()) {
-      if (offered(d, l)) add(l);
-    }
-  }
-  std::stable_sort(all.begin(), all.end(), [](const core_body& a, const core_body& b) { return a.mass() < b.mass(); });
-  return all;
+  if (!d.core.lamination) return cores_where(d, s, [&](const lamination& l) { return offered(d, l); });
+  const lamination& named = s.patterns.named(*d.core.lamination, "/core/lamination");
+  return cores_where(d, s, [&](const lamination& l) { return l.name == named.name; });
 }
 
 design plan(const demand& d, const shop& s) {

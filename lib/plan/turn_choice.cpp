@@ -62,7 +62,7 @@ scored secondaries_for(const demand& d, const tap_turns& taps, const std::vector
 
 }  // namespace
 
-bool is_heater(const secondary_wish& w) { return plain(w.voltage) <= 8 && !w.second_half && !w.no_load; }
+bool is_heater(const secondary_wish& w) { return plain(w.voltage) <= 13 && !w.second_half && !w.no_load && !w.tap_of; }
 
 double tolerance_of(const secondary_wish& w) {
   if (w.fixed.tolerance_ratio) return *w.fixed.tolerance_ratio;

@@ -18,10 +18,10 @@ struct flux_limits {
   teslas high;     ///< highest mains, lowest frequency, worst tap
 };
 
-/// Whether a secondary feeds heaters: up to 8 V, not written as halves.
+/// Whether a secondary feeds heaters: up to 13 V on load, not written as halves, no tap of another.
 bool is_heater(const secondary_wish& w);
 
-/// Tolerance of a secondary's volts as a ratio: the job's, else 3 % up to 8 V, 5 % for a tap, 2 % for the rest.
+/// Tolerance of a secondary's volts as a ratio: the job's, else 3 % for heaters, 5 % for a tap, 2 % for the rest.
 double tolerance_of(const secondary_wish& w);
 
 /// How far volts lie from what was wanted, as a share of the tolerance; 1 is just at its edge.

@@ -17,36 +17,37 @@ const winding_wishes& wishes_of(const demand& d, const coil_role& r) {
   return r.primary ? d.primary.fixed : d.secondaries[r.which].fixed;
 }
 
-std::string grade_of(const demand& d) { return d.wire.grade; }
+wire_pick pick_of(const demand& d, const gauge& g, int strands) {
+  const film* f = film_of(g, d.wire.grade);
+  return {g, f->overall, strands, f->grade};
+}
 
 wire_pick fixed_wire(const demand& d, const shop& s, const coil_role& r, const std::string& size) {
   const std::string where = r.primary ? "/primary/wire" : "/secondaries/" + std::to_string(r.which) + "/wire";
   const looked_up_gauge found = s.wire.look_up(size, where);
-  const auto over = overall(found.wire, grade_of(d));
-  if (!found.exact || !over) {
-    throw refused(wording::other("unknown-name", where, wording::quoted(size),
-                                 "a size of the wire table with enamel of grade " + grade_of(d),
+  if (!found.exact || found.wire.films.empty()) {
+    throw refused(wording::other("unknown-name", where, wording::quoted(size), "a size of the wire table whose enamel is known",
                                  "the nearest is " + wording::quoted(found.wire.size)));
   }
-  return {found.wire, *over, wishes_of(d, r).strands.value_or(1)};
+  return pick_of(d, found.wire, wishes_of(d, r).strands.value_or(1));
 }
 
 wire_pick chosen_wire(const demand& d, const shop& s, const coil_role& r, metres tongue, square_metres area) {
+  constexpr int most_strands = 12;  // more in hand than anyone can lay (judgement)
   const metres stiffest = std::min(1.25_mm, tongue / 20.0);
-  const auto wished = wishes_of(d, r).strands;
   const square_metres frailest = std::numbers::pi / 4 * (0.1_mm * 0.1_mm);  // finer wire breaks in a hand winder's fingers (practice)
-  wire_pick best;
-  for (int strands = wished.value_or(1); strands <= wished.value_or(8); ++strands) {
-    const gauge* g = s.wire.at_least(d.wire.system, grade_of(d), std::max(square_metres(area / static_cast<double>(strands)), frailest));
+  const auto wished = wishes_of(d, r).strands;
+  const gauge* best = nullptr;
+  int best_strands = wished.value_or(most_strands);
+  for (int strands = wished.value_or(1); strands <= wished.value_or(most_strands); ++strands) {
+    const gauge* g = s.wire.at_least(d.wire.system, std::max(square_metres(area / static_cast<double>(strands)), frailest));
     if (!g) continue;
-    best = {*g, *overall(*g, grade_of(d)), strands};
-    if (g->bare <= stiffest) return best;
+    best = g;
+    best_strands = strands;
+    if (g->bare <= stiffest) break;
   }
-  if (best.wire.size.empty()) {
-    throw refused(wording::other("no-wire", "/secondaries", "a current that no wire of the table carries",
-                                 "currents that up to eight strands of the table can carry"));
-  }
-  return best;
+  // Beyond every wire of the table the thickest is taken; the heat then says what is wrong.
+  return pick_of(d, best ? *best : s.wire.thickest(d.wire.system), best_strands);
 }
 
 // Current of the first half with that of every tap inside it: they flow together, in phase at worst.

@@ -26,7 +26,7 @@ volt_amperes rating_of(const demand& d);
 std::vector<double> density_weights(const draft& f);
 
 /// The first size of the shop's system that carries each current, strands added where one wire would be stiffer than
-/// 1.25 mm or a twentieth of the tongue. Wires that the job fixes are kept. Throws `refused` where no table wire exists.
+/// 1.25 mm or a twentieth of the tongue. Wires that the job fixes are kept; throws `refused` for one that the table does not have.
 wire_set pick_wires(const demand& d, const shop& s, metres tongue, const std::vector<coil_amperes>& currents,
                     amperes_per_square_metre density, const std::vector<double>& weights);
 

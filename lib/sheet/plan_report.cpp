@@ -176,7 +176,8 @@ std::string pairs_part(const design& p) {
     t.add({pair.a, pair.b, fixed(plain(pair.working.plain()), 0), fixed(plain(pair.peak.plain()), 0), pair.dc ? fixed(plain(pair.dc->plain()), 0) : "",
            mm(pair.wrap, 2), fixed(plain(pair.test.plain()), 0)});
   }
-  return "Insulation, highest mains, no load (test volts are recalled figures: guidance, not a standard's requirement)\n" + t.text() + "\n";
+  return "Insulation at the highest mains without load\n" + t.text() +
+         wrapped("test volts are recalled figures: guidance, not a standard's requirement", "  ") + "\n";
 }
 
 std::string materials_part(const design& p) {

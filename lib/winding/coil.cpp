@@ -47,8 +47,8 @@ laid_winding lay(const std::vector<block>& blocks, metres inside, const tube& t)
   for (const block& b : blocks) {
     laid_block out{b, turns_per_layer(b, t.width), false, {}};
     if (out.per_layer.count() < 1) {
-      out.too_wide = true;
-      out.per_layer = turns{1};
+      out.too_wide = true;  // laid as one layer, so that whoever asks gets finite figures with the flag
+      out.per_layer = b.n;
     }
     for (int left = b.n.count(); left > 0;) {
       const int here = std::min(left, out.per_layer.count());

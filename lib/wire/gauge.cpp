@@ -4,6 +4,7 @@
 #include <array>
 #include <cmath>
 #include <numbers>
+#include <stdexcept>
 
 #include <turnwright/measure/read.hpp>
 #include <turnwright/measure/written.hpp>
@@ -95,6 +96,13 @@ std::optional<metres> overall(const gauge& g, std::string_view grade) {
   return std::nullopt;
 }
 
+const film* film_of(const gauge& g, std::string_view grade) {
+  for (const film& f : g.films) {
+    if (canonical_grade(f.grade) == canonical_grade(grade)) return &f;
+  }
+  return g.films.empty() ? nullptr : &g.films.back();
+}
+
 metres awg_diameter(double number) { return as<metres>(0.127e-3 * std::pow(92.0, (36 - number) / 39)); }
 
 wire_book::wire_book(const catalogue& tables) {
@@ -142,11 +150,19 @@ const gauge& wire_book::nearest(wire_system s, metres bare) const {
   });
 }
 
-const gauge* wire_book::at_least(wire_system s, std::string_view grade, square_metres area) const {
+const gauge* wire_book::at_least(wire_system s, square_metres area) const {
   for (const gauge& g : sizes(s)) {
-    if (bare_area(g) >= area && overall(g, grade)) return &g;
+    if (bare_area(g) >= area && !g.films.empty()) return &g;
   }
   return nullptr;
+}
+
+const gauge& wire_book::thickest(wire_system s) const {
+  const auto all = sizes(s);
+  for (std::size_t i = all.size(); i > 0; --i) {
+    if (!all[i - 1].films.empty()) return all[i - 1];
+  }
+  throw std::logic_error("a wire table without any film");
 }
 
 }  // namespace turnwright

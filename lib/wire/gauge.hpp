@@ -50,6 +50,9 @@ kilograms_per_metre mass_per_metre(const gauge& g);
 /// and 2 in every system.
 std::optional<metres> overall(const gauge& g, std::string_view grade);
 
+/// The film of a grade, else the thickest that the table has for this size, or nothing where it has none.
+const film* film_of(const gauge& g, std::string_view grade);
+
 /// Diameter of an AWG number [m]: 0.127 mm x 92^((36 - n) / 39). Source: ASTM B258 (formula, read).
 metres awg_diameter(double number);
 
@@ -73,8 +76,10 @@ class wire_book {
   looked_up_gauge look_up(std::string_view text, const std::string& where) const;
   /// The size of a system whose bare diameter is nearest by ratio.
   const gauge& nearest(wire_system s, metres bare) const;
-  /// The thinnest size with film data of that grade and at least that area, or nothing.
-  const gauge* at_least(wire_system s, std::string_view grade, square_metres area) const;
+  /// The thinnest size with film data and at least that area, or nothing.
+  const gauge* at_least(wire_system s, square_metres area) const;
+  /// The thickest size with film data. Throws std::logic_error where no size has any.
+  const gauge& thickest(wire_system s) const;
 
  private:
   std::vector<gauge> metric_, awg_, swg_;

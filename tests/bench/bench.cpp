@@ -1,0 +1,91 @@
+/// Speed, measured and never asserted: run turnwright_bench by hand.
+#include <benchmark/benchmark.h>
+
+#include <fstream>
+#include <sstream>
+
+#include <turnwright/job/job.hpp>
+#include <turnwright/job/result.hpp>
+#include <turnwright/plan/plan.hpp>
+#include <turnwright/sheet/report.hpp>
+
+using namespace turnwright;
+
+namespace {
+
+const catalogue& tables() {
+  static const catalogue c = catalogue::bundled();
+  return c;
+}
+const shop& tools() {
+  static const shop s(tables());
+  return s;
+}
+
+std::string example(const char* name) {
+  std::ifstream in(std::string(TURNWRIGHT_EXAMPLES) + "/" + name + ".json");
+  std::ostringstream text;
+  text << in.rdbuf();
+  return text.str();
+}
+
+supply::sine_network amplifier_network() {
+  supply::sine_network net{volts_rms{as<volts>(230)}, as<hertz>(50), as<ohms>(0.5), turns{430}, as<ohms>(5.7), as<ohms>(5e3), as<ohms>(2e3), {}, {}};
+  for (const auto& [n, r, load] : {std::tuple{657, 39.1, 2060.0}, {657, 41.5, 2060.0}, {10, 0.09, 2.6}, {12, 0.036, 1.5}}) {
+    net.ports.push_back({turns{n}, as<ohms>(r), as<ohms>(load), std::nullopt});
+  }
+  net.leakage.assign(16, as<henries>(1e-3));
+  for (std::size_t k = 0; k < 4; ++k) net.leakage[k * 5] = as<henries>(5e-3);
+  return net;
+}
+
+supply::kernel::network_si amplifier_kernel() {
+  return {230, 314.159265358979, 0.5, 430, 5.7, 1 / 5e3, 1 / 2e3,
+          {{657, 39.1, 2060, -1}, {657, 41.5, 2060, -1}, {10, 0.09, 2.6, -1}, {12, 0.036, 1.5, -1}},
+          {5e-3, 1e-3, 1e-3, 1e-3, 1e-3, 5e-3, 1e-3, 1e-3, 1e-3, 1e-3, 5e-3, 1e-3, 1e-3, 1e-3, 1e-3, 5e-3}};
+}
+
+void network_through_the_door(benchmark::State& state) {
+  const supply::sine_network net = amplifier_network();
+  for (auto _ : state) benchmark::DoNotOptimize(supply::solve(net).primary_current);
+}
+BENCHMARK(network_through_the_door);
+
+void network_kernel(benchmark::State& state) {
+  const supply::kernel::network_si net = amplifier_kernel();
+  for (auto _ : state) benchmark::DoNotOptimize(supply::kernel::solve(net).i1);
+}
+BENCHMARK(network_kernel);
+
+// An evaluation: one drafted coil brought to its balance of heat.
+void one_evaluation(benchmark::State& state) {
+  const demand d = read_job(example("two-el34"), "example", tools(), tables());
+  const design p = plan(d, tools());
+  for (auto _ : state) benchmark::DoNotOptimize(run(d, p.made.coil, p.made.nominal.at, 1.0).residual_K);
+  state.counters["heat_steps"] = p.made.nominal.steps;
+}
+BENCHMARK(one_evaluation);
+
+void plan_with_its_core_named(benchmark::State& state) {
+  const demand d = read_job(example("two-el34"), "example", tools(), tables());
+  for (auto _ : state) benchmark::DoNotOptimize(plan(d, tools()).windable);
+}
+BENCHMARK(plan_with_its_core_named)->Unit(benchmark::kMillisecond);
+
+void plan_that_chooses_its_core(benchmark::State& state) {
+  const demand d = read_job(example("single-ended"), "example", tools(), tables());
+  for (auto _ : state) benchmark::DoNotOptimize(plan(d, tools()).windable);
+}
+BENCHMARK(plan_that_chooses_its_core)->Unit(benchmark::kMillisecond);
+
+void loading_all_tables(benchmark::State& state) {
+  for (auto _ : state) {
+    const catalogue c = catalogue::bundled();
+    benchmark::DoNotOptimize(shop(c).steels.all().size());
+  }
+}
+BENCHMARK(loading_all_tables)->Unit(benchmark::kMillisecond);
+
+}  // namespace
+
+BENCHMARK_MAIN();

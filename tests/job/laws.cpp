@@ -1,0 +1,188 @@
+/// Laws that every plan has to keep, found again from its own JSON for thousands of random jobs.
+#include <algorithm>
+#include <cmath>
+#include <numbers>
+
+#include <nlohmann/json.hpp>
+
+#include <turnwright/job/job.hpp>
+#include <turnwright/job/result.hpp>
+#include <turnwright/plan/plan.hpp>
+#include <turnwright/sheet/columns.hpp>
+#include <turnwright/sheet/report.hpp>
+
+#include "near.hpp"
+#include "random_job.hpp"
+
+using namespace turnwright;
+using nlohmann::json;
+
+namespace {
+
+#ifdef NDEBUG
+constexpr int named_jobs = 2000, open_jobs = 40;
+#else
+constexpr int named_jobs = 100, open_jobs = 2;  // the sanitizers are slow
+#endif
+
+const catalogue& tables() {
+  static const catalogue c = catalogue::bundled();
+  return c;
+}
+const shop& tools() {
+  static const shop s(tables());
+  return s;
+}
+
+design planned(const json& job) { return plan(read_job(job.dump(), "job", tools(), tables()), tools()); }
+
+double area_mm2(const json& wire) { return std::numbers::pi / 4 * std::pow(wire["bare_mm"].get<double>(), 2) * wire["strands"].get<int>(); }
+
+void no_missing_figure(const json& node) {
+  if (node.is_structured()) {
+    for (const auto& item : node) no_missing_figure(item);
+  }
+  REQUIRE_FALSE(node.is_null());
+}
+
+void check_windings(const json& r) {
+  for (const json& w : r["windings"]) {
+    if (w.contains("kind")) continue;
+    INFO(w["name"]);
+    REQUIRE(w["turns"].is_number_integer());
+    REQUIRE(w["turns"] >= 1);
+    REQUIRE(w["layers"].get<int>() * w["turns_per_layer"].get<int>() >= w["turns"].get<int>());
+    REQUIRE(w["turns"].get<int>() * w["mean_turn_mm"].get<double>() * 1e-3 == Approx(w["length_m"].get<double>()).epsilon(1e-6));
+    if (w.contains("sections")) continue;
+    const double ohms = w["length_m"].get<double>() / (58 * area_mm2(w["wire"]));
+    REQUIRE(w["resistance_20C_ohm"].get<double>() == Approx(ohms).epsilon(1e-6));
+    REQUIRE(w["current_A"].get<double>() / area_mm2(w["wire"]) == Approx(w["current_density_A_per_mm2"].get<double>()).epsilon(1e-6));
+    if (w.contains("mass_kg")) {
+      REQUIRE(w["mass_kg"].get<double>() * w["resistance_20C_ohm"].get<double>() == Approx(8890e-6 / 58 * std::pow(w["length_m"].get<double>(), 2)).epsilon(1e-5));
+    }
+  }
+}
+
+// Pitch and layers: what the window holds, found again from margins, diameters and counts.
+void check_pitch(const json& r) {
+  const double width = r["window"]["winding_width_mm"];
+  if (!r["window"]["fits"].get<bool>()) return;
+  for (const json& w : r["windings"]) {
+    if (w.contains("kind") || w.contains("tap_of")) continue;
+    const double pitch = w["wire"]["overall_mm"].get<double>() * w["wire"]["strands"].get<int>();
+    if (!w.contains("sections")) REQUIRE((w["turns_per_layer"].get<int>() + 1) * pitch <= width - 2 * w["margin_mm"].get<double>() + 1e-6);
+    const int before_last = w["turns"].get<int>() - w["last_layer_turns"].get<int>();
+    if (!w.contains("sections")) REQUIRE(before_last == (w["layers"].get<int>() - 1) * w["turns_per_layer"].get<int>());
+  }
+}
+
+void check_flux(const json& job, const json& r) {
+  const double f = std::stod(job["mains"]["frequency"].get<std::string>()), over = std::stod(job["mains"]["tolerance"].get<std::string>()) / 100;
+  const double area = r["core"]["net_area_mm2"].get<double>() * 1e-6;
+  double worst = 0;
+  for (const json& s : r["settings"]) {
+    const double b = std::stod(s["at"].get<std::string>()) / (std::sqrt(2.0) * std::numbers::pi * f * s["turns"].get<int>() * area);
+    REQUIRE(s["flux_density_T"].get<double>() == Approx(b).epsilon(1e-6));
+    worst = std::max(worst, b * (1 + over));
+  }
+  REQUIRE(r["core"]["flux_density_high_T"].get<double>() == Approx(worst).epsilon(1e-6));
+}
+
+void check_volts_per_turn(const json& r) {
+  const double per_turn = r["volts_per_turn_V"];
+  for (const json& w : r["windings"]) {
+    if (!w.contains("kind")) REQUIRE(w["voltage_no_load_V"].get<double>() / w["turns"].get<int>() == Approx(per_turn).epsilon(1e-6));
+  }
+}
+
+void check_power(const json& r) {
+  const json& loss = r["losses"];
+  REQUIRE(loss["copper_W"].get<double>() + loss["core_W"].get<double>() == Approx(loss["total_W"].get<double>()).epsilon(1e-7));
+  REQUIRE(r["input_W"].get<double>() == Approx(r["output_W"].get<double>() + loss["total_W"].get<double>()).epsilon(1e-6));
+  double copper = 0;
+  for (const json& w : r["windings"]) copper += w.value("loss_W", 0.0);
+  REQUIRE(copper == Approx(loss["copper_W"].get<double>()).epsilon(1e-6));
+  const double primary = r["windings"][0]["resistance_20C_ohm"].get<double>();
+  REQUIRE(r["core"]["no_load_power_W"].get<double>() >= r["core"]["no_load_core_loss_W"].get<double>());
+  REQUIRE(primary > 0);
+}
+
+// Ampere-turns balance: the primary's are those of all loads and of the no-load current together. The phases differ by
+// what leakage turns them, so in magnitudes this is the triangle's inequality, and close to equality from above.
+void check_ampere_turns(const design& p) {
+  double referred = 0;
+  const auto ports = ports_of(p.wanted, p.made.coil);
+  const double n1 = turns_in_use(p.made.nominal.at, p.made.coil.n.primary).count();
+  for (std::size_t k = 0; k < ports.size(); ++k) {
+    referred += plain(p.made.nominal.electric.ports[k].current.plain()) * (ports[k].to - ports[k].from).count() / n1;
+  }
+  const double line = plain(p.made.nominal.electric.primary_current.plain());
+  const double no_load = std::hypot(plain(p.made.nominal.magnetising.plain()), plain(p.made.nominal.core_loss) / plain(p.made.nominal.electric.emf.plain()));
+  REQUIRE(line <= referred + no_load * (1 + 1e-9));
+  if (p.windable) REQUIRE(line >= 0.97 * referred);
+}
+
+void check_report(const design& p) {
+  const std::string text = report_of(p, true);
+  std::size_t from = 0;
+  while (from < text.size()) {
+    const std::size_t to = text.find('\n', from);
+    const std::string line = text.substr(from, to - from);
+    INFO(line);
+    REQUIRE(shown_width(line) <= paper_width);
+    REQUIRE((line.empty() || line.back() != ' '));
+    REQUIRE(line.find("nan") == std::string::npos);
+    from = to + 1;
+  }
+}
+
+void check_all(const json& job) {
+  INFO(job.dump());
+  const design p = planned(job);
+  const json r = json::parse(json_of(p));
+  no_missing_figure(r);
+  check_windings(r);
+  check_pitch(r);
+  check_flux(job, r);
+  check_volts_per_turn(r);
+  check_power(r);
+  check_ampere_turns(p);
+  check_report(p);
+  if (p.windable) {
+    REQUIRE(r["window"]["fits"].get<bool>());
+    REQUIRE(r["thermal"]["winding_rise_K"].get<double>() <= plain(p.wanted.limits.temperature_rise) * (1 + 1e-9));
+    REQUIRE(p.made.nominal.residual_K < 1e-7);
+    REQUIRE(p.made.high.residual_K < 1e-7);
+    for (const check& c : p.checks) REQUIRE(c.weight != level::stop);
+  } else {
+    const bool says_why = std::any_of(p.checks.begin(), p.checks.end(), [](const check& c) { return c.weight == level::stop && !c.cure.empty(); });
+    REQUIRE(says_why);
+  }
+}
+
+}  // namespace
+
+TEST_CASE("every plan keeps the laws of its trade, whatever the job", "[property]") {
+  testing::job_dice dice(101);
+  for (int i = 0; i < named_jobs; ++i) check_all(dice.job(true));
+}
+
+TEST_CASE("every plan whose core is open keeps them too", "[property]") {
+  testing::job_dice dice(102);
+  int windable = 0;
+  for (int i = 0; i < open_jobs; ++i) {
+    const json job = dice.job(false);
+    check_all(job);
+    windable += planned(job).windable ? 1 : 0;
+  }
+  CHECK(windable >= open_jobs * 3 / 4);
+}
+
+TEST_CASE("the same job gives the same bytes every time", "[property]") {
+  testing::job_dice dice(103);
+  for (int i = 0; i < 20; ++i) {
+    const json job = dice.job(true);
+    REQUIRE(json_of(planned(job)) == json_of(planned(job)));
+    REQUIRE(report_of(planned(job), true) == report_of(planned(job), true));
+  }
+}
