@@ -1,5 +1,6 @@
 #include <turnwright/iron/body.hpp>
 
+#include <array>
 #include <cmath>
 #include <numbers>
 
@@ -58,12 +59,17 @@ metres core_body::joint_gap() const {
 }
 
 amperes_rms core_body::magnetising_current(teslas b, turns n) const {
-  constexpr int samples = 48;  // midpoints of a quarter cycle; the error of the r.m.s. is below 1e-4 up to 1.8 T
+  constexpr int samples = 48;  // midpoints of a quarter cycle
+  static const auto sines = [] {
+    std::array<double, samples> s{};
+    for (int i = 0; i < samples; ++i) s[static_cast<std::size_t>(i)] = std::sin((i + 0.5) * std::numbers::pi / (2 * samples));
+    return s;
+  }();
   constexpr double mu0 = 4e-7 * std::numbers::pi;
   const double l_m = plain(path_), gap_m = plain(joint_gap());
   double squares = 0;
-  for (int i = 0; i < samples; ++i) {
-    const double now = plain(b) * std::sin((i + 0.5) * std::numbers::pi / (2 * samples));
+  for (const double sine : sines) {
+    const double now = plain(b) * sine;
     const double ampere_turns = plain(curve_.field(as<teslas>(now))) * l_m + now * gap_m / mu0;
     squares += ampere_turns * ampere_turns;
   }

@@ -114,13 +114,12 @@ thermal::heated_coil heated(const demand& d, const draft& f) {
   h.former_wall = f.room.wall;
   h.outer_wrap = f.shape.bulge * wraps::outer;
   h.end_space = f.room.cheek + f.coils.back().margin;
-  h.core_loss = 0_W;
   h.core_surface = f.core.exposed_surface();
   h.core_height = l.height;
   h.ambient = d.limits.ambient;
   for (const coil_draft& c : f.coils) {
     const stray_piece span = span_of(f, c, turns{0}, total_turns(c.laid));
-    h.windings.push_back({span.inner, span.outer, height_of(f, c), 0_W, radial_conductivity(c), axial_conductivity(c)});
+    h.windings.push_back({span.inner, span.outer, height_of(f, c), radial_conductivity(c), axial_conductivity(c)});
   }
   return h;
 }
@@ -185,12 +184,10 @@ running run(const demand& d, const draft& f, const selector_position& at, double
   r.mains_ratio = mains_ratio;
   r.copper.assign(f.coils.size(), d.limits.ambient + 40_K);
   fixed_parts p = prepare(d, f, at, mains_ratio);
-  thermal::heated_coil h = heated(d, f);
+  const thermal::heat_balance balance(heated(d, f));
   for (r.steps = 1; r.steps <= 60; ++r.steps) {
     settle_electric(d, f, p, r.copper, r);
-    h.core_loss = r.core_loss;
-    for (std::size_t i = 0; i < f.coils.size(); ++i) h.windings[i].loss = r.coil_loss[i];
-    r.heat = thermal::balance(h);
+    r.heat = balance.solve(r.core_loss, r.coil_loss);
     r.residual_K = 0;
     for (std::size_t i = 0; i < f.coils.size(); ++i) {
       // Far beyond any winding's life the figure only has to stay finite and large.

@@ -3,6 +3,7 @@
 #include <algorithm>
 #include <cmath>
 #include <numbers>
+#include <stdexcept>
 
 #include <Eigen/Dense>
 
@@ -30,51 +31,59 @@ double in_series(std::initializer_list<double> resistances) {
   return 1 / sum;
 }
 
-// Conductances between core (0), coil surface (1), the mean of each winding and its mid-plane, built once: only the
-// surfaces change with rise. A slab heated throughout is its two halves t / 2k in series through the mid-plane, with
-// -t / 6k from there to its mean: exact for any share of heat to either face.
-class network {
- public:
+}  // namespace
+
+// Conductances between core (0), coil surface (1), the mean of each winding and its mid-plane. A slab heated throughout is
+// its two halves t / 2k in series through the mid-plane, with -t / 6k from there to its mean: exact for any share of heat
+// to either face. Only the two surfaces change with their rise, so the rest is factored once and they are a correction of
+// rank two.
+struct heat_balance::network {
   explicit network(const heated_coil& c) : c_(c), nodes_(2 * static_cast<Eigen::Index>(c.windings.size()) + 2) {
     fixed_ = Eigen::MatrixXd::Zero(nodes_, nodes_);
-    heat_ = Eigen::VectorXd::Zero(nodes_);
-    heat_(0) = plain(c.core_loss);
     for (std::size_t i = 0; i < c.windings.size(); ++i) {
-      heat_(mean(i)) = plain(c.windings[i].loss);
       join(mean(i), middle(i), -3 / half_slab(c.windings[i]));
       along_limb(i);
     }
     across_layers();
-    const heated_winding& last = c.windings.back();
-    surface_m2_ = end_length(outside_of_coil()) * plain(last.height) + end_faces_m2_;
+    surface_m2_ = end_length(outside_of_coil()) * plain(c.windings.back().height) + end_faces_m2_;
+    fixed_(0, 0) += base_W_per_m2K * plain(c.core_surface);
+    fixed_(1, 1) += base_W_per_m2K * surface_m2_;
+    factored_ = fixed_.partialPivLu();
+    to_surfaces_ = factored_.solve(Eigen::MatrixXd::Identity(nodes_, 2));
   }
 
-  heat_state solve() const {
-    const double ambient_K = c_.ambient.value();
-    double core = 30, surface = 30;
+  heat_state solve(watts core_loss, const std::vector<watts>& losses) const {
+    Eigen::VectorXd heat = Eigen::VectorXd::Zero(nodes_);
+    heat(0) = plain(core_loss);
+    for (std::size_t i = 0; i < losses.size(); ++i) heat(mean(i)) = plain(losses[i]);
+    const Eigen::VectorXd base = factored_.solve(heat);
     heat_state out;
-    Eigen::VectorXd rise = Eigen::VectorXd::Constant(nodes_, 30.0);
-    for (out.steps = 1; out.steps <= 60; ++out.steps) {
-      Eigen::MatrixXd g = fixed_;
-      g(0, 0) += surface_coefficient(core, plain(c_.core_height), ambient_K) * plain(c_.core_surface);
-      g(1, 1) += surface_coefficient(surface, plain(c_.windings.back().height), ambient_K) * surface_m2_;
-      rise = g.partialPivLu().solve(heat_);
-      const double change = std::abs(rise(0) - core) + std::abs(rise(1) - surface);
-      core = rise(0);
-      surface = rise(1);
+    Eigen::Vector2d at = base.head<2>(), conductance, excess;
+    for (out.steps = 1; out.steps <= 80; ++out.steps) {
+      conductance = {core_W_per_K(at(0)), surface_W_per_K(at(1))};
+      excess = {conductance(0) - base_W_per_m2K * plain(c_.core_surface), conductance(1) - base_W_per_m2K * surface_m2_};
+      const Eigen::Matrix2d m = Eigen::Matrix2d::Identity() + to_surfaces_.topRows<2>() * excess.asDiagonal();
+      const Eigen::Vector2d next = m.inverse() * base.head<2>();
+      const double change = (next - at).cwiseAbs().sum();
+      at = next;
       if (change < 1e-10) break;
     }
-    const double away = core * surface_coefficient(core, plain(c_.core_height), ambient_K) * plain(c_.core_surface) +
-                        surface * surface_coefficient(surface, plain(c_.windings.back().height), ambient_K) * surface_m2_;
-    out.core = as<kelvins>(core);
-    out.coil_surface = as<kelvins>(surface);
-    for (std::size_t i = 0; i < c_.windings.size(); ++i) out.windings.push_back(as<kelvins>(rise(mean(i))));
+    const Eigen::VectorXd rise = base - to_surfaces_ * (excess.asDiagonal() * at);
+    const double away = at(0) * core_W_per_K(at(0)) + at(1) * surface_W_per_K(at(1));
+    out.core = as<kelvins>(at(0));
+    out.coil_surface = as<kelvins>(at(1));
+    for (std::size_t i = 0; i < losses.size(); ++i) out.windings.push_back(as<kelvins>(rise(mean(i))));
     out.to_air = as<watts>(away);
-    out.residual = heat_.sum() > 0 ? (heat_.sum() - away) / heat_.sum() : 0.0;
+    out.residual = heat.sum() > 0 ? (heat.sum() - away) / heat.sum() : 0.0;
     return out;
   }
 
- private:
+  double core_W_per_K(double rise) const {
+    return surface_coefficient(rise, plain(c_.core_height), c_.ambient.value()) * plain(c_.core_surface);
+  }
+  double surface_W_per_K(double rise) const {
+    return surface_coefficient(rise, plain(c_.windings.back().height), c_.ambient.value()) * surface_m2_;
+  }
   static Eigen::Index mean(std::size_t winding) { return static_cast<Eigen::Index>(winding) + 2; }
   Eigen::Index middle(std::size_t winding) const { return mean(winding) + static_cast<Eigen::Index>(c_.windings.size()); }
   double window_length() const { return 2 * plain(c_.stack); }
@@ -130,16 +139,20 @@ class network {
     end_faces_m2_ += at_ends;
   }
 
-  const heated_coil& c_;
+  static constexpr double base_W_per_m2K = 12;  // near what surfaces have, so that the correction stays small
+  heated_coil c_;
   Eigen::Index nodes_;
-  Eigen::MatrixXd fixed_;
-  Eigen::VectorXd heat_;
+  Eigen::MatrixXd fixed_, to_surfaces_;
+  Eigen::PartialPivLU<Eigen::MatrixXd> factored_;
   double end_faces_m2_ = 0, surface_m2_ = 0;
 };
 
-}  // namespace
+heat_balance::heat_balance(const heated_coil& coil) : network_(std::make_shared<const network>(coil)) {}
 
-heat_state balance(const heated_coil& coil) { return network(coil).solve(); }
+heat_state heat_balance::solve(watts core_loss, const std::vector<watts>& losses) const {
+  if (losses.size() != network_->c_.windings.size()) throw std::logic_error("a loss for each winding");
+  return network_->solve(core_loss, losses);
+}
 
 kelvins surface_rule(watts loss, square_metres surface) {
   return as<kelvins>(450 * std::pow(plain(loss) / (plain(surface) * 1e4), 0.826));

@@ -7,6 +7,7 @@
 #include <catch2/catch.hpp>
 
 #include <cmath>
+#include <filesystem>
 #include <fstream>
 #include <sstream>
 #include <string>
@@ -34,6 +35,26 @@ inline std::string file_text(const std::string& path) {
   std::ostringstream text;
   text << in.rdbuf();
   return text.str();
+}
+
+/// Faults with which an action is refused; none when it is not.
+template <class Action>
+std::vector<remark> faults_of(Action action) {
+  try {
+    action();
+  } catch (const refused& why) {
+    return why.remarks();
+  }
+  return {};
+}
+
+/// A fresh folder of the shop's own tables below the scratch folder, with one file in it.
+inline std::filesystem::path shop_folder(const std::string& name, const std::string& file, const std::string& text) {
+  const std::filesystem::path folder = std::filesystem::path(TURNWRIGHT_SCRATCH) / "shop" / name;
+  std::filesystem::remove_all(folder);
+  std::filesystem::create_directories(folder);
+  std::ofstream(folder / file, std::ios::binary) << text;
+  return folder;
 }
 
 }  // namespace turnwright::testing
