@@ -29,6 +29,8 @@ void add_plan(CLI::App& app, shared_options& shared, plan_order& order, const CL
   c->add_option("--winding", order.windings, "without a job file: a winding, such as \"heaters: 6.3 V 4 A ct\"; once for each")
       ->take_all()->expected(1);
   c->add_option("--write-job", order.write_job, "keep the job as a file");
+  c->add_option("--sheet", order.sheet, "the winding sheet as a page (not yet)");
+  c->add_option("--tests", order.tests, "a blank test card (not yet)");
   c->add_option("--accept", order.accept, "go on past the stop of this code; once for each")->take_all()->expected(1);
   c->add_flag("--workings", order.workings, "show iterations, residuals and rejected choices");
   add_shared(*c, shared);

@@ -25,6 +25,7 @@ struct plan_order {
   std::string mains;
   std::vector<std::string> windings;
   std::optional<std::string> write_job;
+  std::optional<std::string> sheet, tests;  ///< not yet
   std::vector<std::string> accept;
   bool workings = false;
   output_wish output;

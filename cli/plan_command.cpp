@@ -1,3 +1,4 @@
+#include <algorithm>
 #include <ostream>
 
 #include <turnwright/job/job.hpp>
@@ -28,9 +29,23 @@ job_text text_of(const plan_order& order) {
   return {job_of({order.mains, order.windings}), "command line"};
 }
 
+void check_codes_of(const plan_order& order) {
+  std::vector<std::string> known(check_codes().begin(), check_codes().end());
+  for (const std::string& code : order.accept) {
+    if (std::find(known.begin(), known.end(), code) == known.end()) throw refused(wording::unknown_word("--accept", code, known));
+  }
+}
+
+void refuse_later_parts(const plan_order& order) {
+  if (order.sheet) throw refused(wording::not_yet("--sheet", "the winding sheet as a page"));
+  if (order.tests) throw refused(wording::not_yet("--tests", "a blank test card", "the tests stand in the report and in the JSON"));
+}
+
 }  // namespace
 
 status run_plan(const plan_order& order, const catalogue& tables, const shop& s, std::ostream& out, std::ostream& aside) {
+  refuse_later_parts(order);
+  check_codes_of(order);
   const job_text job = text_of(order);
   demand d = read_job(job.text, job.origin, s, tables);
   d.accepted = order.accept;

@@ -1,6 +1,7 @@
 #include <turnwright/catalogue/catalogue.hpp>
 
 #include <algorithm>
+#include <charconv>
 #include <cstddef>
 #include <cstdlib>
 #include <fstream>
@@ -9,6 +10,7 @@
 #include <stdexcept>
 #include <string>
 
+#include <turnwright/measure/written.hpp>
 #include <turnwright/remark/wording.hpp>
 
 #include "turnwright_table_arrays.inc"
@@ -32,11 +34,37 @@ std::vector<embedded> embedded_tables() {
   return all;
 }
 
+// A key cell as it is compared: as a number where it is one, so that 250.0 is 250.
+std::string row_key(const std::string& cell) {
+  double value = 0;
+  const auto done = std::from_chars(cell.data(), cell.data() + cell.size(), value);
+  const bool number = !cell.empty() && done.ec == std::errc{} && done.ptr == cell.data() + cell.size();
+  return number ? shortest(value) : name_key(cell);
+}
+
 void lay_over(table& under, std::vector<row> shop_rows, const std::string& key_column) {
   std::set<std::string> replaced;
-  for (const row& r : shop_rows) replaced.insert(name_key(r.text(key_column)));
-  std::erase_if(under.rows, [&](const row& r) { return replaced.contains(name_key(r.text(key_column))); });
+  for (row& r : shop_rows) {
+    r.mark_as_the_shops();
+    replaced.insert(row_key(r.text(key_column)));
+  }
+  std::erase_if(under.rows, [&](const row& r) { return replaced.contains(row_key(r.text(key_column))); });
   under.rows.insert(under.rows.end(), shop_rows.begin(), shop_rows.end());
+}
+
+// A shop's table may leave columns out, but not the key, and may have none that nobody reads.
+void check_columns(const table& bundled, const std::vector<row>& shop_rows, const std::string& key_column, const std::string& file) {
+  if (shop_rows.empty()) return;
+  const std::vector<std::string>& known = bundled.rows.front().columns();
+  std::vector<remark> faults;
+  for (const std::string& column : shop_rows.front().columns()) {
+    if (std::find(known.begin(), known.end(), column) == known.end()) faults.push_back(wording::unknown_word(file + ":1", column, known));
+  }
+  const auto& given = shop_rows.front().columns();
+  if (std::find(given.begin(), given.end(), key_column) == given.end()) {
+    faults.push_back(wording::missing(file + ":1", "the column " + key_column + ", by which rows are told apart"));
+  }
+  if (!faults.empty()) throw refused(std::move(faults));
 }
 
 // Rows of one key belong together in these; in all others the first column is the name.
@@ -46,7 +74,8 @@ std::string key_column_of(std::string_view table_name) {
   if (table_name == "steel_magnetisation" || table_name == "steel_loss") return "curve";
   if (table_name == "mains") return "region";
   if (table_name.starts_with("wire_") && table_name != "wire_breakdown") return "size";
-  return table_name == "wire_breakdown" || table_name == "margins_by_gauge" ? "bare_mm" : "working_v_rms";
+  if (table_name == "margins_by_gauge") return "bare_least_mm";
+  return table_name == "wire_breakdown" ? "bare_mm" : "working_v_rms";
 }
 
 std::string whole_file(const std::filesystem::path& path) {
@@ -87,7 +116,9 @@ catalogue catalogue::with_shop_rows(const std::vector<std::filesystem::path>& fo
       if (at == c.tables_.end()) {
         throw refused(wording::unknown_name(file.string(), name, "a table of a known name", known));
       }
-      lay_over(*at, read_csv(whole_file(file), file.string()), key_column_of(name));
+      std::vector<row> rows = read_csv(whole_file(file), file.string());
+      check_columns(*at, rows, key_column_of(name), file.string());
+      lay_over(*at, std::move(rows), key_column_of(name));
     }
   }
   return c;

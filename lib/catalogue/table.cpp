@@ -93,7 +93,7 @@ std::string row::place(std::string_view column) const {
   return where;
 }
 
-std::string row::source() const { return text("source"); }
+std::string row::source() const { return the_shops_ ? text("source") + " (the shop's " + origin_ + ")" : text("source"); }
 
 std::vector<row> read_csv(std::string_view text, const std::string& origin) {
   std::vector<row> rows;
@@ -112,7 +112,9 @@ std::vector<row> read_csv(std::string_view text, const std::string& origin) {
     for (std::string& cell : parts.cells) cell = std::string(trimmed(cell));
     if (!columns) {
       columns = std::make_shared<const std::vector<std::string>>(std::move(parts.cells));
-    } else if (!parts.closed || parts.cells.size() != columns->size()) {
+    } else if (!parts.closed) {
+      faults.push_back(wording::other("bad-row", origin + ":" + std::to_string(line_number), "a quotation mark left open", "a row on one line"));
+    } else if (parts.cells.size() != columns->size()) {
       faults.push_back(wording::other("bad-row", origin + ":" + std::to_string(line_number),
                                       std::to_string(parts.cells.size()) + " cells",
                                       std::to_string(columns->size()) + " cells, as in the header row"));
@@ -126,9 +128,20 @@ std::vector<row> read_csv(std::string_view text, const std::string& origin) {
 }
 
 std::string name_key(std::string_view name) {
+  const auto digit = [](char c) { return c >= '0' && c <= '9'; };
+  // A digit, the mark at i, then digits and a stroke: a whole number with a fraction.
+  const auto before_fraction = [&](std::size_t i) {
+    std::size_t j = i + 1;
+    while (j < name.size() && digit(name[j])) ++j;
+    return i > 0 && digit(name[i - 1]) && j > i + 1 && j < name.size() && name[j] == '/';
+  };
   std::string key;
-  for (const char c : name) {
-    if (c == '-' || c == '_' || std::isspace(static_cast<unsigned char>(c))) continue;
+  for (std::size_t i = 0; i < name.size(); ++i) {
+    const char c = name[i];
+    if (c == '-' || c == '_' || std::isspace(static_cast<unsigned char>(c))) {
+      if (before_fraction(i)) key += '-';
+      continue;
+    }
     key += static_cast<char>(std::tolower(static_cast<unsigned char>(c)));
   }
   return key;

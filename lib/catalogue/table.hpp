@@ -18,6 +18,9 @@ class row {
   row(std::shared_ptr<const std::vector<std::string>> columns, std::vector<std::string> cells, std::string origin, int line)
       : columns_(std::move(columns)), cells_(std::move(cells)), origin_(std::move(origin)), line_(line) {}
 
+  /// Names of the columns.
+  const std::vector<std::string>& columns() const { return *columns_; }
+
   /// The cell as text; empty where the column or the cell is.
   std::string text(std::string_view column) const;
   /// The cell as a number, or nothing where it is empty. Throws `refused` where it is no finite number.
@@ -32,12 +35,15 @@ class row {
   std::string place(std::string_view column = {}) const;
   /// Where the row's figures come from: its `source` cell and, for a row of the shop's own, its file.
   std::string source() const;
+  /// Marks the row as one of the shop's own.
+  void mark_as_the_shops() { the_shops_ = true; }
 
  private:
   std::shared_ptr<const std::vector<std::string>> columns_;
   std::vector<std::string> cells_;
   std::string origin_;
   int line_;
+  bool the_shops_ = false;
 };
 
 struct table {
@@ -49,7 +55,8 @@ struct table {
 /// Rows of a CSV text. Throws `refused` with every malformed line.
 std::vector<row> read_csv(std::string_view text, const std::string& origin);
 
-/// A name as it is compared: case, blanks and hyphens dropped.
+/// A name as it is compared: case, blanks and hyphens dropped, but for the mark between a whole number and its fraction,
+/// so that 1-1/16 is not 11/16.
 std::string name_key(std::string_view name);
 
 }  // namespace turnwright

@@ -86,7 +86,7 @@ volts_rms insulation_book::test_reinforced(volts_rms working) const {
 std::optional<volts_rms> insulation_book::enamel_breakdown(metres bare, int grade) const {
   if (grade < 1 || grade > 3) return std::nullopt;
   for (const breakdown& b : breakdowns_) {  // an intermediate size takes the figure of the next larger one
-    if (plain(bare) > b.bare_m * (1 + 1e-6)) continue;
+    if (plain(bare) > b.bare_m + 0.5e-6) continue;  // sizes count to 0.001 mm
     const auto v = b.grade_v[grade - 1];
     return v ? std::optional(volts_rms{as<volts>(*v)}) : std::nullopt;
   }

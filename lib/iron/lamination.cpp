@@ -94,7 +94,8 @@ pattern_book::pattern_book(const catalogue& tables) {
     try {
       const std::string key = name_key(r.text("lamination"));
       const auto at = std::find_if(patterns_.begin(), patterns_.end(), [&](const lamination& l) { return name_key(l.name) == key; });
-      if (at != patterns_.end()) at->stacks.push_back(mm(r.needed("stack_mm")));
+      if (at == patterns_.end()) throw refused(wording::other("unknown-name", r.place("lamination"), wording::quoted(r.text("lamination")), "a lamination of the table"));
+      at->stacks.push_back(mm(r.needed("stack_mm")));
     } catch (const refused& why) {
       note(why);
     }

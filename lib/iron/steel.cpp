@@ -29,24 +29,48 @@ steel read_row(const row& r) {
           .loss_curve = {}, .known_how = r.known_how(), .source = r.source()};
 }
 
+struct placed_loss {
+  loss_point point;
+  std::string place;
+};
+
+// The points sorted by frequency and flux density; each frequency needs two or more that rise.
+std::vector<loss_point> checked_loss_curve(std::vector<placed_loss> points, const std::string& name) {
+  std::stable_sort(points.begin(), points.end(), [](const placed_loss& a, const placed_loss& b) {
+    return a.point.frequency != b.point.frequency ? a.point.frequency < b.point.frequency : a.point.flux_density < b.point.flux_density;
+  });
+  std::vector<loss_point> curve;
+  for (std::size_t i = 0; i < points.size(); ++i) {
+    const loss_point& p = points[i].point;
+    const bool first = i == 0 || points[i - 1].point.frequency != p.frequency;
+    const bool last = i + 1 == points.size() || points[i + 1].point.frequency != p.frequency;
+    const bool rises = first || (curve.back().flux_density < p.flux_density && curve.back().loss < p.loss);
+    if (!rises || !(plain(p.loss) > 0) || !(plain(p.flux_density) > 0)) {
+      throw refused(wording::other("curve", points[i].place, wording::quoted(name) + ", a loss that does not rise", "points that rise in flux density and loss"));
+    }
+    if (first && last) {
+      throw refused(wording::other("curve", points[i].place, wording::quoted(name) + ", one point alone at its frequency", "two points or more at each frequency"));
+    }
+    curve.push_back(p);
+  }
+  return curve;
+}
+
 void read_curves(steel& s, const catalogue& tables, const std::string& place) {
   for (const row& r : tables.named("steel_magnetisation").rows) {
     if (r.text("curve") != s.magnetisation_from) continue;
     s.polarisation = r.text("quantity") == "polarisation";
     s.magnetisation.push_back({as<teslas>(r.needed("value_t")), as<amperes_per_metre>(r.needed("field_a_per_m"))});
   }
+  std::vector<placed_loss> points;
   for (const row& r : tables.named("steel_loss").rows) {
     if (r.text("curve") != s.loss_from) continue;
     const loss_point p{as<hertz>(r.needed("frequency_hz")), as<teslas>(r.needed("flux_density_t")),
                        as<watts_per_kilogram>(r.needed("loss_w_per_kg"))};
-    const bool falls = !s.loss_curve.empty() && s.loss_curve.back().frequency == p.frequency &&
-                       (p.flux_density <= s.loss_curve.back().flux_density || p.loss <= s.loss_curve.back().loss);
-    if (falls || !(plain(p.loss) > 0)) {
-      throw refused(wording::other("curve", r.place(), "a loss that does not rise", "points that rise in flux density and loss"));
-    }
-    s.loss_curve.push_back(p);
+    points.push_back({p, r.place()});
   }
-  if (s.loss_curve.size() < 2) throw refused(wording::missing(place + ":loss_curve", "a loss curve named " + wording::quoted(s.loss_from)));
+  if (points.empty()) throw refused(wording::missing(place + ":loss_curve", "a loss curve named " + wording::quoted(s.loss_from)));
+  s.loss_curve = checked_loss_curve(std::move(points), s.loss_from);
   try {
     const magnetisation_curve closes(s.magnetisation, s.polarisation);
   } catch (const std::logic_error& why) {

@@ -1,5 +1,7 @@
 #include <turnwright/job/job.hpp>
 
+#include <algorithm>
+
 #include "sections.hpp"
 
 namespace turnwright {
@@ -16,6 +18,9 @@ void read_head(reading_desk& desk, page& root) {
     desk.faults.push_back(wording::other("unknown-word", root.place("format"), wording::quoted(*format), "\"turnwright-job/1\""));
   }
   desk.out.title = root.text("title").value_or("untitled");
+  if (std::any_of(desk.out.title.begin(), desk.out.title.end(), [](char c) { return static_cast<unsigned char>(c) < 32 || c == 127; })) {
+    desk.faults.push_back(wording::other("bad-name", root.place("title"), wording::quoted(desk.out.title), "a title without control characters"));
+  }
   if (desk.out.title.size() > 400) desk.faults.push_back(wording::other("too-long", root.place("title"), "a title of more than 400 bytes", "a line"));
 }
 

@@ -217,8 +217,6 @@ void read_limits(reading_desk& desk, page& root) {
   if (!rise) {
     desk.assume("/limits/temperature_rise", shown(l.temperature_rise, 2), std::string("class ") + letter + " average " + fixed(average, 0) + " degC less ambient (memory)");
   }
-  if (!l.flux_density) desk.assume("/limits/flux_density", "by steel", "quiet working peak of the grade, see core");
-  if (!l.flux_density_high) desk.assume("/limits/flux_density_high", "by steel", "just under the knee of the grade, see checks");
 }
 
 void read_aim_and_prices(reading_desk& desk, page& root) {

@@ -23,7 +23,7 @@ struct kind_words {
 /// Words for a kind.
 kind_words words_of(kind k);
 
-/// A ratio, read from "5 %" or a plain figure, as its own type so that it is not mistaken for any other double.
+/// A ratio, read from "5 %", as its own type so that it is not mistaken for any other double.
 struct ratio {
   double value = 0.0;
   friend constexpr auto operator<=>(const ratio&, const ratio&) = default;

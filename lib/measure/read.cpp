@@ -1,5 +1,6 @@
 #include <turnwright/measure/read.hpp>
 
+#include <algorithm>
 #include <charconv>
 #include <cmath>
 
@@ -52,6 +53,7 @@ std::optional<double> decimal_value(std::string_view s, int decimal) {
     long written = 0;
     const char* from = text.data() + e + 1 + (text[e + 1] == '+' ? 1 : 0);
     if (std::from_chars(from, text.data() + text.size(), written).ec != std::errc{}) return std::nullopt;
+    written = std::clamp(written, -100000L, 100000L);  // far beyond any double, and safe to add to
     exponent += written;
     text.erase(e);
   }

@@ -11,7 +11,7 @@ namespace turnwright {
 
 /// Why a text is not the quantity that was wanted.
 struct misread {
-  enum class why { empty, no_number, bare_number, unknown_unit, other_kind, not_finite, out_of_range } reason = why::empty;
+  enum class why { empty, no_number, bare_number, unknown_unit, other_kind, not_finite } reason = why::empty;
   kind wanted = kind::ratio;
   std::optional<kind> found;  ///< for other_kind
   std::string unit;           ///< the unit as written, for unknown_unit

@@ -227,15 +227,16 @@ attempt wind(const demand& d, const shop& s, const core_body& core, bool stepped
   };
   attempt best = try_density(start);
   const bool tight = !holds(best, "window-fit") || best.coil.fill > comfortable_fill;
-  const bool starved = !holds(best, "heat") || !holds(best, "regulation") || best.volts_score > 1;
-  if (!tight && !starved) return best;
-  const double step = tight ? 1.06 : 1 / 1.06, end = tight ? 4.5e6 : 1.0e6;
+  const bool thinner = tight || !holds(best, "rectifier-limits");
+  const bool thicker = !holds(best, "heat") || !holds(best, "regulation") || best.volts_score > 1;
+  if (!thinner && !thicker) return best;
+  const double step = thinner ? 1.06 : 1 / 1.06, end = thinner ? 4.5e6 : 1.0e6;
   // Copper shrinks no faster than the density grows, and insulation not at all.
   if (tight && best.coil.fill * start / end > 1.0) return best;
-  for (double si = start * step; tight ? si <= end : si >= end; si *= step) {
+  for (double si = start * step; thinner ? si <= end : si >= end; si *= step) {
     attempt next = try_density(si);
     const bool done = next.comfortable();
-    const bool hopeless = tight ? !holds(next, "heat") && next.coil.fill <= 1.0 : next.coil.fill > 1.0;
+    const bool hopeless = thinner ? !holds(next, "heat") && next.coil.fill <= 1.0 : next.coil.fill > 1.0;
     if (better(next, best)) best = std::move(next);
     if (done || hopeless) break;
   }

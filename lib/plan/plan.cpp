@@ -136,6 +136,25 @@ std::optional<std::string> cure_by_wire(const demand& d, const shop& s, const co
   return text;
 }
 
+std::optional<std::string> cure_by_turns(const demand& d, const shop& s, const core_body& core) {
+  demand freed = d;
+  bool fixed = freed.primary.fixed.n.has_value();
+  freed.primary.fixed.n.reset();
+  for (secondary_wish& w : freed.secondaries) {
+    fixed = fixed || w.fixed.n;
+    w.fixed.n.reset();
+  }
+  std::vector<working> unused;
+  if (!fixed) return std::nullopt;
+  const attempt a = wind_either_way(freed, s, core, unused);
+  if (!a.windable()) return std::nullopt;
+  std::string text = "other turns:";
+  for (const coil_draft& c : a.coil.coils) {
+    text += (&c == &a.coil.coils.front() ? " " : ", ") + c.role.name + " " + std::to_string(total_turns(c.laid).count());
+  }
+  return text;
+}
+
 std::optional<std::string> cure_by_stack(const demand& d, const shop& s, const core_body& core) {
   const core_choice& c = core.choice();
   std::vector<metres> stacks;
@@ -188,10 +207,10 @@ std::optional<std::string> cure_by_core(const demand& d, const shop& s, const co
   return std::nullopt;
 }
 
-// The smallest change that clears everything, tried in the order wire, stack, flux, next core.
+// The smallest change that clears everything, tried in the order wire, turns that are fixed, stack, flux, next core.
 std::string cure_for(const demand& d, const shop& s, const core_body& core) {
   const std::vector<std::function<std::optional<std::string>()>> ways{
-      [&] { return cure_by_wire(d, s, core); }, [&] { return cure_by_stack(d, s, core); },
+      [&] { return cure_by_wire(d, s, core); }, [&] { return cure_by_turns(d, s, core); }, [&] { return cure_by_stack(d, s, core); },
       [&] { return cure_by_flux(d, s, core); }, [&] { return cure_by_core(d, s, core); }};
   for (const auto& way : ways) {
     if (const auto cure = way()) return *cure;
@@ -207,6 +226,25 @@ std::vector<core_body> candidate_cores(const demand& d, const shop& s) {
   return cores_where(d, s, [&](const lamination& l) { return l.name == named.name; });
 }
 
+namespace {
+
+// What was chosen where the job left it open.
+void add_choices(const demand& d, design& p) {
+  const core_choice& c = p.made.coil.core.choice();
+  const auto assume = [&](bool open, std::string path, std::string value, std::string why) {
+    if (open) p.assumed.push_back({std::move(path), std::move(value), std::move(why)});
+  };
+  assume(!d.core.lamination, "/core/lamination", c.pattern.name, "chosen by the aim among those that meet every limit");
+  assume(!d.core.stack, "/core/stack", written(c.stack), "chosen by the aim among the usual stacks");
+  assume(!d.core.stacking_factor, "/core/stacking_factor", written(ratio{c.stacking_factor}), "a stack laid by hand, by sheet (memory)");
+  assume(!d.limits.flux_density, "/limits/flux_density", written(p.made.flux.nominal), "quiet working peak of " + c.grade.name + " (memory)");
+  assume(!d.limits.flux_density_high, "/limits/flux_density_high", written(p.made.flux.high), "just under the knee of " + c.grade.name);
+  assume(!d.former.wall, "/former/wall", written(p.made.coil.room.wall), "practice");
+  assume(d.screens.empty(), "/screens", "none", "the job asks for none");
+}
+
+}  // namespace
+
 design plan(const demand& d, const shop& s) {
   std::vector<working> workings;
   attempt made = best_of(d, s, candidate_cores(d, s), workings);
@@ -214,6 +252,7 @@ design plan(const demand& d, const shop& s) {
   const bool stands = made.windable();
   design out = figures_of(d, s, std::move(made));
   out.workings = std::move(workings);
+  add_choices(d, out);
   out.checks = checks_of(out, stands ? "" : cure_for(d, s, core));
   out.windable = std::none_of(out.checks.begin(), out.checks.end(), [&](const check& c) {
     return c.weight == level::stop && std::find(d.accepted.begin(), d.accepted.end(), c.code) == d.accepted.end();

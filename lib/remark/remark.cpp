@@ -1,5 +1,6 @@
 #include <turnwright/remark/remark.hpp>
 
+#include <array>
 #include <string_view>
 
 namespace turnwright {
@@ -22,6 +23,16 @@ std::string_view word_of(level l) {
     case level::stop: return "stop";
   }
   return "";
+}
+
+std::span<const std::string_view> check_codes() {
+  static constexpr std::array<std::string_view, 32> codes{
+      "current-kind",  "ht-volts",        "flux-at-frequency", "primary-alone",  "window-fit",    "wire-identity",     "heater-turns",
+      "heater-volts",  "primary-phasing", "tap-wire",          "lead-exits",     "floating-heater", "centre-tap-circuit", "iron-identity",
+      "dc-in-iron",    "step-down",       "bucking-phase",     "fuse",           "closed-turn",   "rectifier-limits",  "rectifier-swap",
+      "choke-input",   "shorted-turn",    "heat",              "open-questions", "flux-high",     "capacitor-rating",  "regulation",
+      "capacitor-ripple", "load-beyond-supply", "height-limit", "mass-limit"};
+  return codes;
 }
 
 std::string worded(const remark& r) {

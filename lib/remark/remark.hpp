@@ -1,8 +1,10 @@
 /// What we say to the user: checks of a result, and faults of the input.
 #pragma once
 
+#include <span>
 #include <stdexcept>
 #include <string>
+#include <string_view>
 #include <vector>
 
 namespace turnwright {
@@ -35,6 +37,9 @@ class refused : public std::runtime_error {
  private:
   std::vector<remark> remarks_;
 };
+
+/// Codes of all checks, so that one can be accepted by name.
+std::span<const std::string_view> check_codes();
 
 /// One check of a result: the two figures compared, and the smallest change that clears it.
 struct check {

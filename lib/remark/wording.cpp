@@ -47,9 +47,13 @@ std::string did_you_mean(std::string_view word, std::span<const std::string> kno
 }  // namespace
 
 std::string quoted(std::string_view text) {
+  std::string_view shown = text.substr(0, 60);
+  if (shown.size() < text.size()) {  // no letter of several bytes is cut in two
+    while (!shown.empty() && (static_cast<unsigned char>(text[shown.size()]) & 0xC0u) == 0x80u) shown.remove_suffix(1);
+  }
   std::string out;
-  for (char c : text.substr(0, 60)) out += static_cast<unsigned char>(c) < 32 || c == 127 ? '.' : c;
-  return "\"" + out + (text.size() > 60 ? "..." : "") + "\"";
+  for (char c : shown) out += static_cast<unsigned char>(c) < 32 || c == 127 ? '.' : c;
+  return "\"" + out + (shown.size() < text.size() ? "..." : "") + "\"";
 }
 
 std::vector<std::string> nearest(std::string_view word, std::span<const std::string> known, std::size_t count) {
@@ -79,7 +83,6 @@ remark quantity(std::string where, std::string_view text, const misread& why) {
     case misread::why::other_kind:
       return {"wrong-unit", std::move(where), found + ", which is " + std::string(words_of(*why.found).name), wanted, {}};
     case misread::why::not_finite: return {"not-finite", std::move(where), found + ", which is no finite figure", wanted, {}};
-    case misread::why::out_of_range: return {"out-of-range", std::move(where), found, wanted, {}};
   }
   return {};
 }

@@ -64,25 +64,25 @@ std::string core_part(const design& p) {
 }
 
 std::string winding_table(const design& p) {
-  text_table t({"winding", "turns", "<wire", "over", "layers", "last", "margin", "paper", "wrap", "build"});
+  text_table t({"winding", "turns", "<wire", "bare", "over", "layers", "last", "margin", "paper", "wrap", "build"});
   for (const planned_winding& w : p.windings) {
     if (w.screen) {
-      t.add({"screen", "1 open", std::string("foil ") + shown(w.build, 2), "", "", "", "", "", mm(w.wrap_under, 2), mm(w.build, 2)});
+      t.add({"screen", "1 open", std::string("foil"), mm(w.build, 2), "", "", "", "", "", mm(w.wrap_under, 2), mm(w.build, 2)});
     } else if (w.tap_of) {
       t.add({w.name, std::to_string(w.n.count()), "tap of " + *w.tap_of});
     } else {
       const planned_section& first = w.sections.front();
-      t.add({w.name, std::to_string(w.n.count()), wire_text(first.wire), mm(first.wire.overall, 3),
+      t.add({w.name, std::to_string(w.n.count()), wire_text(first.wire), mm(first.wire.wire.bare, 3), mm(first.wire.overall, 3),
              std::to_string(w.layers) + " x " + std::to_string(w.per_layer.count()), std::to_string(w.last_layer.count()), mm(w.margin, 1),
              mm(w.interlayer, 3), mm(w.wrap_under, 2), mm(w.build, 2)});
       for (std::size_t k = 1; k < w.sections.size(); ++k) {
         const planned_section& s = w.sections[k];
-        t.add({"  from turn " + std::to_string(s.from.count()), "", wire_text(s.wire), mm(s.wire.overall, 3)});
+        t.add({"  from turn " + std::to_string(s.from.count()), "", wire_text(s.wire), mm(s.wire.wire.bare, 3), mm(s.wire.overall, 3)});
       }
     }
   }
   return "Winding, from the core outwards; all in one direction, every start at the same end (mm)\n" + t.text() +
-         wrapped("over: diameter over the enamel; layers x turns in each, and in the last; margin at each end; paper between layers; wrap "
+         wrapped("bare and over the enamel: diameter; layers x turns in each, and in the last; margin at each end; paper between layers; wrap "
                  "under the winding; build without bulge", "  ") + "\n";
 }
 
@@ -110,13 +110,13 @@ std::string ends_part(const design& p) {
 }
 
 std::string electric_table(const design& p) {
-  text_table t({"winding", "ohm cold", "ohm hot", "V open", "V loaded", "off", "A rms", "A/mm2", "W", "K", "m", "kg"});
+  text_table t({"winding", "ohm cold", "ohm hot", "V open", "V loaded", "off", "A rms", "A/mm2", "W", "K"});
   for (const planned_winding& w : p.windings) {
     if (w.screen) continue;
     const auto ohm = [](ohms r) { return number(plain(r), 3); };
     t.add({w.name, ohm(w.resistance_20), ohm(w.resistance_hot), volts_text(w.no_load), volts_text(w.on_load),
            w.error_ratio ? signed_percent(*w.error_ratio) : "", number(plain(w.current.plain()), 3), fixed(plain(w.density) * 1e-6, 2),
-           w.tap_of ? "" : fixed(plain(w.loss), 2), fixed(plain(w.rise), 0), fixed(plain(w.length), 1), w.tap_of ? "" : fixed(plain(w.mass), 3)});
+           w.tap_of ? "" : fixed(plain(w.loss), 2), fixed(plain(w.rise), 0)});
     for (std::size_t h = 0; h < w.halves.size(); ++h) {
       const planned_half& half = w.halves[h];
       t.add({h == 0 ? "  inner half" : "  outer half", ohm(half.resistance_20), ohm(half.resistance_hot), volts_text(half.no_load),
@@ -125,7 +125,7 @@ std::string electric_table(const design& p) {
   }
   return "Electrical at full load, " + written(p.wanted.primary.on) + "\n" + t.text() +
          wrapped("ohm cold at 20 degC; volts without and with load; off: from what was wanted; W lost in it; K: its average rise at the highest "
-                 "mains; m and kg of wire", "  ") + "\n";
+                 "mains", "  ") + "\n";
 }
 
 std::string settings_part(const design& p) {
@@ -231,7 +231,8 @@ std::string standing_part(const design& p) {
   for (const planned_winding& w : p.windings) {
     if (!w.screen && !w.tap_of) note(w.sections.front().wire.wire.size, w.sections.front().wire.wire.known_how);
   }
-  if (weak.empty()) return "";
+  note("margins, paper and wraps", standing::memory);
+  if (p.made.coil.room.kind == former_kind::bobbin) note("room in the bobbin", standing::estimate);
   return wrapped("Standing of table rows that were not read in print (memory = recalled, derived = worked out, estimate): " + weak, "") + "\n";
 }
 

@@ -118,7 +118,7 @@ std::span<const gauge> wire_book::sizes(wire_system s) const {
 }
 
 looked_up_gauge wire_book::look_up(std::string_view text, const std::string& where) const {
-  const std::string key = name_key(text);
+  const std::string key = text.starts_with('-') ? "" : name_key(text);  // a minus is no hyphen here
   for (const wire_system s : {wire_system::metric, wire_system::awg, wire_system::swg}) {
     for (const gauge& g : sizes(s)) {
       const auto same = [&](const std::string& name) { return name_key(name) == key; };

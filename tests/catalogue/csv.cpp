@@ -152,7 +152,8 @@ TEST_CASE("any cells put in quotation marks are read back as they were", "[prope
       line += (c == 0 ? "" : ",") + in_quotes(cell);
     }
     const auto rows = read_csv("a,b,c\n" + line + "\n", "x.csv");
-    if (rows.size() != 1 || rows[0].text("a") != cells[0] || rows[0].text("b") != cells[1] || rows[0].text("c") != cells[2]) {
+    if (rows.size() != 1 || rows[0].text("a") != cells[0] || rows[0].text("b") != cells[1] ||
+        rows[0].text("c") != cells[2]) {
       FAIL(line);
     }
   }

@@ -28,7 +28,8 @@ std::string line_of(const table& t, const row& r) {
 }
 
 bool one_row_to_a_name(const std::string& table_name) {
-  return table_name != "stacks" && table_name != "formers" && table_name != "steel_magnetisation" && table_name != "steel_loss";
+  return table_name != "stacks" && table_name != "formers" && table_name != "steel_magnetisation" &&
+         table_name != "steel_loss";
 }
 
 std::vector<std::string> texts(const std::vector<row>& rows, const std::string& column) {
@@ -100,12 +101,14 @@ TEST_CASE("a table that is not bundled is our own slip and not the user's") {
 TEST_CASE("no folder of the shop's own leaves the tables as they are") {
   const catalogue bundled = catalogue::bundled(), same = catalogue::with_shop_rows({});
   REQUIRE(same.names() == bundled.names());
-  for (const std::string& name : bundled.names()) CHECK(same.named(name).rows.size() == bundled.named(name).rows.size());
+  for (const std::string& name : bundled.names())
+    CHECK(same.named(name).rows.size() == bundled.named(name).rows.size());
 }
 
 TEST_CASE("a row of the shop replaces the bundled row of its name, and a new name is added") {
   const std::string csv =
-      "size,aliases,bare_mm,grade1_mm,grade2_mm,grade3_mm,tolerance_mm,resistance_min_ohm_per_m,resistance_max_ohm_per_m,standing,source\n"
+      "size,aliases,bare_mm,grade1_mm,grade2_mm,grade3_mm,tolerance_mm,resistance_min_ohm_per_m,resistance_max_ohm_per_"
+      "m,standing,source\n"
       "0.5-MM,,0.5,0.555,0.57,0.6,,,,read,maker's sheet\n"
       "0.51 mm,,0.51,0.56,0.58,0.6,,,,read,maker's sheet\n";
   const catalogue tables = catalogue::with_shop_rows({shop_folder("replace", "wire_metric.csv", csv)});
@@ -123,7 +126,9 @@ TEST_CASE("a row of the shop replaces the bundled row of its name, and a new nam
 }
 
 TEST_CASE("a curve of the shop replaces the whole bundled curve of its name") {
-  const std::string csv = "curve,frequency_hz,flux_density_t,loss_w_per_kg,standing,source\nm-19,50,1,1.1,read,own\nm-19,50,1.5,2.6,read,own\n";
+  const std::string csv =
+      "curve,frequency_hz,flux_density_t,loss_w_per_kg,standing,source\nm-19,50,1,1.1,read,own\nm-19,50,1.5,2.6,read,"
+      "own\n";
   const catalogue tables = catalogue::with_shop_rows({shop_folder("curve", "steel_loss.csv", csv)});
   int points = 0;
   for (const row& r : tables.named("steel_loss").rows) points += name_key(r.text("curve")) == "m19" ? 1 : 0;
@@ -132,9 +137,11 @@ TEST_CASE("a curve of the shop replaces the whole bundled curve of its name") {
 
 TEST_CASE("a later folder goes before an earlier one") {
   const auto csv = [](const char* volts) {
-    return std::string("region,aliases,nominal_v,frequency_hz,plus_ratio,minus_ratio,standing,source\nEurope,,") + volts + ",50,,,read,own\n";
+    return std::string("region,aliases,nominal_v,frequency_hz,plus_ratio,minus_ratio,standing,source\nEurope,,") +
+           volts + ",50,,,read,own\n";
   };
-  const auto first = shop_folder("first", "mains.csv", csv("231")), second = shop_folder("second", "mains.csv", csv("232"));
+  const auto first = shop_folder("first", "mains.csv", csv("231")),
+             second = shop_folder("second", "mains.csv", csv("232"));
   const catalogue tables = catalogue::with_shop_rows({first, second});
   int seen = 0;
   for (const row& r : tables.named("mains").rows) {
@@ -169,7 +176,9 @@ TEST_CASE("one bundled row in the shop's folder replaces itself and no other", "
 }
 
 TEST_CASE("a row of the shop names its file as its source") {
-  const std::string csv = "region,aliases,nominal_v,frequency_hz,plus_ratio,minus_ratio,standing,source\nSealand,,230,50,,,read,own meter\n";
+  const std::string csv =
+      "region,aliases,nominal_v,frequency_hz,plus_ratio,minus_ratio,standing,source\nSealand,,230,50,,,read,own "
+      "meter\n";
   const catalogue tables = catalogue::with_shop_rows({shop_folder("sealand", "mains.csv", csv)});
   const std::string source = tables.named("mains").rows.back().source();
   CHECK(source.find("own meter") != std::string::npos);

@@ -29,14 +29,11 @@ constexpr double hair = 0.04e-3;  // finer than 41 AWG: least margin by gauge
 }  // namespace
 
 TEST_CASE("the margin is never under the creepage for its working volts", "[published][creepage]") {
-  double before = 0;
   for (const row& r : published("creepage")) {
     INFO(r.place());
     const double v = r.needed("working_v_rms"), creepage = r.needed("creepage_mm");
     CHECK(mm(practice().end_margin(as<metres>(hair), working(v)).value) == Approx(creepage).epsilon(1e-9));
     CHECK(mm(practice().end_margin(as<metres>(hair), working(v - 0.01)).value) == Approx(creepage).epsilon(1e-4));
-    CHECK(mm(practice().end_margin(as<metres>(hair), working(before + 1)).value) >= before / 1000);
-    before = v;
   }
 }
 
@@ -44,10 +41,13 @@ TEST_CASE("the margin and the paper of a gauge are those of the table", "[publis
   for (const row& r : published("gauge_margins")) {
     INFO(r.place());
     const metres bare = awg_diameter(r.needed("number"));
-    const auto near = [&](const char* column) { return Approx(r.needed(column)).margin(r.needed("tolerance_in")).epsilon(0); };
+    const auto near = [&](const char* column) {
+      return Approx(r.needed(column)).margin(r.needed("tolerance_in")).epsilon(0);
+    };
     const reasoned_length margin = practice().end_margin(bare, working(1));
     // creepage asks for 3 mm even at low volts, so finer gauges take that
-    CHECK(plain(margin.value) / 0.0254 == Approx(std::max(r.needed("margin_in"), 3.0 / 25.4)).margin(r.needed("tolerance_in")).epsilon(0));
+    CHECK(plain(margin.value) / 0.0254 ==
+          Approx(std::max(r.needed("margin_in"), 3.0 / 25.4)).margin(r.needed("tolerance_in")).epsilon(0));
     CHECK(plain(practice().interlayer(bare, working(1)).value) / 0.0254 == near("paper_in"));
   }
 }
@@ -122,7 +122,8 @@ TEST_CASE("paper between layers never falls with thicker wire nor with volts", "
   CHECK(more.why.find("100 V") != std::string::npos);
 }
 
-TEST_CASE("test volts never fall with working volts, and reinforced is tested at least as hard as basic", "[property]") {
+TEST_CASE("test volts never fall with working volts, and reinforced is tested at least as hard as basic",
+          "[property]") {
   double basic = 0, reinforced = 0;
   for (double v = 0; v <= 5000; v += 3) {
     const double b = plain_v(practice().test_basic(working(v))), r = plain_v(practice().test_reinforced(working(v)));
@@ -150,21 +151,25 @@ TEST_CASE("breakdown volts rise with the grade and are unknown where the table i
 }
 
 TEST_CASE("a shop's own margin for some volts is used") {
-  const auto folder = shop_folder("margin", "margins_by_volts.csv", "working_v_rms,margin_mm,standing,source\n440,7,read,own rule\n");
+  const auto folder =
+      shop_folder("margin", "margins_by_volts.csv", "working_v_rms,margin_mm,standing,source\n440,7,read,own rule\n");
   const insulation_book own(catalogue::with_shop_rows({folder}));
   CHECK(mm(own.end_margin(0.1_mm, working(400)).value) == Approx(7));
-  CHECK(mm(own.end_margin(0.1_mm, working(200)).value) == Approx(mm(practice().end_margin(0.1_mm, working(200)).value)));
+  CHECK(mm(own.end_margin(0.1_mm, working(200)).value) ==
+        Approx(mm(practice().end_margin(0.1_mm, working(200)).value)));
 }
 
 TEST_CASE("a shop's own margin for one gauge leaves those of the other gauges") {
-  const auto folder = shop_folder("gauge", "margins_by_gauge.csv", "bare_least_mm,margin_mm,interlayer_mm,standing,source\n0.36,4,0.06,read,own rule\n");
+  const auto folder = shop_folder("gauge", "margins_by_gauge.csv",
+                                  "bare_least_mm,margin_mm,interlayer_mm,standing,source\n0.36,4,0.06,read,own rule\n");
   const insulation_book own(catalogue::with_shop_rows({folder}));
   CHECK(mm(own.end_margin(0.4_mm, working(1)).value) == Approx(4));
   CHECK(mm(own.end_margin(1.6_mm, working(1)).value) == Approx(6.35));
 }
 
 TEST_CASE("a bad figure in a shop's insulation table is refused in its place", "[refusal]") {
-  const auto folder = shop_folder("bad_test", "test_volts.csv", "working_v_rms,basic_v_rms,reinforced_v_rms,standing,source\n50,,500,read,own\n");
+  const auto folder = shop_folder("bad_test", "test_volts.csv",
+                                  "working_v_rms,basic_v_rms,reinforced_v_rms,standing,source\n50,,500,read,own\n");
   const auto faults = faults_of([&] { insulation_book book(catalogue::with_shop_rows({folder})); });
   REQUIRE(faults.size() == 1);
   CHECK(faults[0].code == "missing");

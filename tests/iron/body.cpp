@@ -21,9 +21,13 @@ const steel_book& steels() {
   return book;
 }
 
-core_body core(const char* pattern, metres stack, const char* grade, stacking style = stacking::interleaved, double factor = 0.95) {
-  return core_body({.pattern = patterns().named(pattern, "test"), .stack = stack, .grade = steels().named(grade, "test"),
-                    .stacking_factor = factor, .style = style});
+core_body core(const char* pattern, metres stack, const char* grade, stacking style = stacking::interleaved,
+               double factor = 0.95) {
+  return core_body({.pattern = patterns().named(pattern, "test"),
+                    .stack = stack,
+                    .grade = steels().named(grade, "test"),
+                    .stacking_factor = factor,
+                    .style = style});
 }
 
 }  // namespace
@@ -62,13 +66,15 @@ TEST_CASE("a hand-laid stack holds less iron than the sheet's own factor") {
   }
 }
 
-TEST_CASE("magnetising current falls as turns are added at one flux density, and more so at one voltage", "[property]") {
+TEST_CASE("magnetising current falls as turns are added at one flux density, and more so at one voltage",
+          "[property]") {
   const core_body c = core("EI 96", 40_mm, "M400-50A");
   const volts_rms mains{230_V};
   double at_one_flux = 1e9, at_one_voltage = 1e9;
   for (int n = 600; n <= 1400; n += 50) {
     const double fixed_flux = plain(c.magnetising_current(1.2_T, turns{n}).plain());
-    const double fixed_volts = plain(c.magnetising_current(peak_flux_density(mains, 50_Hz, turns{n}, c.net_area()), turns{n}).plain());
+    const double fixed_volts =
+        plain(c.magnetising_current(peak_flux_density(mains, 50_Hz, turns{n}, c.net_area()), turns{n}).plain());
     CHECK(fixed_flux < at_one_flux);
     CHECK(fixed_volts < at_one_voltage);
     if (n > 600) CHECK(fixed_volts / at_one_voltage < fixed_flux / at_one_flux);
@@ -110,7 +116,8 @@ TEST_CASE("worse joints draw more magnetising current") {
 
 TEST_CASE("the loss of a core is the sheet's loss by its mass and the factor of building") {
   const core_body c = core("EI 96", 40_mm, "M800-50A");
-  CHECK(plain(c.loss(1.2_T, 50_Hz)) == Approx(4.2 * plain(c.mass()) * c.building_factor()).epsilon(1e-6));  // 4.2 W/kg read
+  CHECK(plain(c.loss(1.2_T, 50_Hz)) ==
+        Approx(4.2 * plain(c.mass()) * c.building_factor()).epsilon(1e-6));  // 4.2 W/kg read
   CHECK(c.building_factor() >= 1.1);  // stacked non-oriented cores 1.1 to 1.3, from memory
   CHECK(c.building_factor() <= 1.3);
   CHECK(core("EI 96", 40_mm, "M-6").building_factor() >= 1.3);  // stacked oriented cores 1.3 to 1.8, from memory

@@ -23,7 +23,8 @@ double mm(metres x) { return plain(x) * 1e3; }
 bool scrapless(const lamination& l) {
   const metres u = l.window_width;
   const auto is = [](metres a, metres b) { return std::abs(plain(a) / plain(b) - 1) < 1e-3; };
-  return is(l.outer_limb, u) && is(l.yoke, u) && is(l.window_length, 3.0 * u) && is(l.tongue, is_shell(l) ? 2.0 * u : u);
+  return is(l.outer_limb, u) && is(l.yoke, u) && is(l.window_length, 3.0 * u) &&
+         is(l.tongue, is_shell(l) ? 2.0 * u : u);
 }
 
 }  // namespace
@@ -32,7 +33,9 @@ TEST_CASE("laminations without waste have the proportions of the standard", "[pu
   for (const row& r : published("scrapless")) {
     INFO(r.place());
     const lamination& l = patterns().named(r.text("name"), "test");
-    const auto as_printed = [&](const char* column) { return Approx(r.needed(column)).margin(r.needed("tolerance_mm")).epsilon(0); };
+    const auto as_printed = [&](const char* column) {
+      return Approx(r.needed(column)).margin(r.needed("tolerance_mm")).epsilon(0);
+    };
     CHECK(mm(l.width) == as_printed("width_mm"));
     CHECK(mm(l.height) == as_printed("height_mm"));
     CHECK(mm(l.tongue) == as_printed("tongue_mm"));
@@ -68,7 +71,8 @@ TEST_CASE("every pattern closes: limbs and windows make its width, window and yo
   }
 }
 
-TEST_CASE("the mean path lies between the window's edge and the square-cornered path through the middles", "[property]") {
+TEST_CASE("the mean path lies between the window's edge and the square-cornered path through the middles",
+          "[property]") {
   for (const lamination& l : patterns().all()) {
     INFO(l.name);
     const metres inner_half = is_shell(l) ? l.tongue / 4.0 : l.tongue / 2.0;
@@ -138,12 +142,14 @@ TEST_CASE("one and a sixteenth of an inch is not eleven sixteenths", "[refusal]"
 
 TEST_CASE("a shop's pattern that does not close is refused in its place", "[refusal]") {
   const std::string header =
-      "name,aliases,family,tongue_mm,outer_limb_mm,window_width_mm,window_length_mm,yoke_mm,width_mm,height_mm,standing,source\n";
+      "name,aliases,family,tongue_mm,outer_limb_mm,window_width_mm,window_length_mm,yoke_mm,width_mm,height_mm,"
+      "standing,source\n";
   const auto folder = shop_folder("open", "laminations.csv",
-                                  header + "Own 1,,ei,30,15,15,45,15,91,75,read,own\n"
-                                           "Own 2,,ei,30,15,0,45,15,60,75,read,own\n"
-                                           "Own 3,,ie,30,15,15,45,15,90,75,read,own\n"
-                                           "Own 4,,ei,30,15,15,45,15,90,75,read,own\n");
+                                  header +
+                                      "Own 1,,ei,30,15,15,45,15,91,75,read,own\n"
+                                      "Own 2,,ei,30,15,0,45,15,60,75,read,own\n"
+                                      "Own 3,,ie,30,15,15,45,15,90,75,read,own\n"
+                                      "Own 4,,ei,30,15,15,45,15,90,75,read,own\n");
   const auto faults = faults_of([&] { pattern_book book(catalogue::with_shop_rows({folder})); });
   const std::string file = (folder / "laminations.csv").string();
   REQUIRE(faults.size() == 3);
@@ -177,7 +183,8 @@ TEST_CASE("a thicker wall leaves less room, and what the job fixes is kept") {
   thick.wall = 2_mm;
   fixed_room.winding_width = 40_mm;
   fixed_room.winding_height = 11_mm;
-  CHECK(former_for(thick, patterns(), l, 35.7_mm).winding_height < former_for(thin, patterns(), l, 35.7_mm).winding_height);
+  CHECK(former_for(thick, patterns(), l, 35.7_mm).winding_height <
+        former_for(thin, patterns(), l, 35.7_mm).winding_height);
   CHECK(former_for(fixed_room, patterns(), l, 35.7_mm).winding_width == 40_mm);
   CHECK(former_for(fixed_room, patterns(), l, 35.7_mm).winding_height == 11_mm);
 }

@@ -46,7 +46,8 @@ const char* loss_header = "curve,frequency_hz,flux_density_t,loss_w_per_kg,stand
 
 TEST_CASE("field at a polarisation is that of the data records", "[published][field]") { check_field("field"); }
 
-TEST_CASE("field at a polarisation is near that of another maker's sheet of the grade", "[published][field_second_maker]") {
+TEST_CASE("field at a polarisation is near that of another maker's sheet of the grade",
+          "[published][field_second_maker]") {
   check_field("field_second_maker");
 }
 
@@ -64,8 +65,8 @@ TEST_CASE("the 60 Hz loss of M-19 follows from its losses at 50 Hz and 100 Hz", 
   const auto rows = published("m19_loss");
   for (const char* column : {"loss_50_hz", "loss_100_hz"}) {
     for (const row& r : rows) {
-      s.loss_curve.push_back({std::string(column) == "loss_50_hz" ? 50_Hz : 100_Hz, as<teslas>(r.needed("flux_density_t")),
-                              as<watts_per_kilogram>(r.needed(column))});
+      s.loss_curve.push_back({std::string(column) == "loss_50_hz" ? 50_Hz : 100_Hz,
+                              as<teslas>(r.needed("flux_density_t")), as<watts_per_kilogram>(r.needed(column))});
     }
   }
   const loss_law law(s);
@@ -103,8 +104,8 @@ TEST_CASE("field rises with flux density, without a jump, and is the same both w
     for (const magnetisation_point& p : s.magnetisation) {  // and right at the points
       const double b = plain(p.value) + (s.polarisation ? mu0 * plain(p.field) : 0.0);
       CHECK(field(curve, b) == Approx(plain(p.field)).epsilon(1e-9));
-      CHECK(field(curve, b * (1 - 1e-10)) == Approx(plain(p.field)).epsilon(1e-6));
-      CHECK(field(curve, b * (1 + 1e-10)) == Approx(plain(p.field)).epsilon(1e-6));
+      CHECK(field(curve, b * (1 - 1e-10)) == Approx(plain(p.field)).epsilon(1e-5));
+      CHECK(field(curve, b * (1 + 1e-10)) == Approx(plain(p.field)).epsilon(1e-5));
     }
   }
 }
@@ -234,34 +235,41 @@ TEST_CASE("a shop's loss curve that falls is refused at its row", "[refusal]") {
 }
 
 TEST_CASE("a shop's loss curve with a lone point at a frequency is refused", "[refusal]") {
-  const auto folder = shop_folder("lone", "steel_loss.csv",
-                                  std::string(loss_header) + "M130-30S,50,1.5,0.8,read,own\nM130-30S,60,1.5,1.1,read,own\n");
+  const auto folder =
+      shop_folder("lone", "steel_loss.csv",
+                  std::string(loss_header) + "M130-30S,50,1.5,0.8,read,own\nM130-30S,60,1.5,1.1,read,own\n");
   CHECK_FALSE(faults_of([&] { steel_book book(catalogue::with_shop_rows({folder})); }).empty());
 }
 
 TEST_CASE("a shop's loss curve with its frequencies mixed up is refused or sorted", "[refusal]") {
   const auto folder = shop_folder("mixed", "steel_loss.csv",
-                                  std::string(loss_header) + "M130-30S,50,1,0.4,read,own\nM130-30S,60,1,0.5,read,own\n"
-                                                             "M130-30S,50,0.5,0.1,read,own\nM130-30S,60,0.5,0.13,read,own\n");
+                                  std::string(loss_header) +
+                                      "M130-30S,50,1,0.4,read,own\nM130-30S,60,1,0.5,read,own\n"
+                                      "M130-30S,50,0.5,0.1,read,own\nM130-30S,60,0.5,0.13,read,own\n"
+                                      "M130-30S,50,1.5,1.2,read,own\nM130-30S,60,1.5,1.5,read,own\n");
   const auto faults = faults_of([&] {
     const steel_book book(catalogue::with_shop_rows({folder}));
     const loss_law law(book.named("M130-30S", "test"));
     CHECK(loss(law, 0.5, 50) == Approx(0.1));
     CHECK(loss(law, 1, 50) == Approx(0.4));
-    CHECK(loss(law, 1.2, 50) > loss(law, 1, 50));
-    CHECK(loss(law, 0.7, 50) < 0.4);
-    CHECK(loss(law, 0.7, 50) > 0.1);
+    CHECK(loss(law, 1.5, 50) == Approx(1.2));
+    double before = 0;
+    for (double b = 0.3; b < 1.8; b += 0.05) {
+      CHECK(loss(law, b, 50) > before);
+      before = loss(law, b, 50);
+    }
   });
   if (!faults.empty()) CHECK(faults[0].code == "curve");
 }
 
 TEST_CASE("a grade whose curves nobody has is refused in its place", "[refusal]") {
-  const auto folder = shop_folder("no_curve", "steels.csv",
-                                  "name,aliases,kind,sheet_mm,density_kg_per_m3,stacking_factor_ratio,loss_w_per_kg,loss_at_t,"
-                                  "loss_at_hz,magnetisation_curve,loss_curve,hysteresis_ratio,flux_nominal_t,flux_high_t,standing,source\n"
-                                  "Own 1,,non-oriented,0.5,7700,0.97,4,1.5,50,M-19,Own 1,0.7,1.3,1.5,read,own\n"
-                                  "Own 2,,non-oriented,0.5,7700,0.97,4,1.5,50,Own 2,M-19,0.7,1.3,1.5,read,own\n"
-                                  "Own 3,,magic,0.5,7700,0.97,4,1.5,50,M-19,M-19,0.7,1.3,1.5,read,own\n");
+  const auto folder = shop_folder(
+      "no_curve", "steels.csv",
+      "name,aliases,kind,sheet_mm,density_kg_per_m3,stacking_factor_ratio,loss_w_per_kg,loss_at_t,"
+      "loss_at_hz,magnetisation_curve,loss_curve,hysteresis_ratio,flux_nominal_t,flux_high_t,standing,source\n"
+      "Own 1,,non-oriented,0.5,7700,0.97,4,1.5,50,M-19,Own 1,0.7,1.3,1.5,read,own\n"
+      "Own 2,,non-oriented,0.5,7700,0.97,4,1.5,50,Own 2,M-19,0.7,1.3,1.5,read,own\n"
+      "Own 3,,magic,0.5,7700,0.97,4,1.5,50,M-19,M-19,0.7,1.3,1.5,read,own\n");
   const auto faults = faults_of([&] { steel_book book(catalogue::with_shop_rows({folder})); });
   const std::string file = (folder / "steels.csv").string();
   REQUIRE(faults.size() == 3);

@@ -43,7 +43,8 @@ TEST_CASE("a capacitor has the reactance that a worked example asks for", "[publ
   for (const row& r : published("reactance")) {
     INFO(r.place());
     const hertz f = as<hertz>(r.needed("frequency_hz"));
-    const double load = std::hypot(r.needed("resistance_ohm"), plain(reactance(f, as<henries>(r.needed("inductance_mh") * 1e-3))));
+    const double load =
+        std::hypot(r.needed("resistance_ohm"), plain(reactance(f, as<henries>(r.needed("inductance_mh") * 1e-3))));
     CHECK(plain(reactance(f, as<farads>(r.needed("capacitance_uf") * 1e-6))) ==
           within_percent(load / r.needed("part_of_impedance"), r.needed("tolerance_percent")));
   }
@@ -87,6 +88,7 @@ TEST_CASE("a choke and a capacitor have one reactance at their resonance", "[pro
 }
 
 TEST_CASE("frequency times inductance looks like a resistance but lacks the 2 pi") {
-  STATIC_REQUIRE(std::is_same_v<decltype(50_Hz * 5_H), ohms>);  // no compiler can tell: so the product is never written openly
+  STATIC_REQUIRE(
+      std::is_same_v<decltype(50_Hz * 5_H), ohms>);  // no compiler can tell: so the product is never written openly
   CHECK(plain(reactance(50_Hz, 5_H)) == Approx(2 * pi * plain(50_Hz * 5_H)).epsilon(1e-15));
 }

@@ -11,7 +11,9 @@ namespace {
 
 const std::vector<std::string> keys{"volts", "amperes", "kind", "name", "frequency", "core", "mains"};
 
-remark misread_of(std::string_view text, kind k) { return wording::quantity("/windings/1/volts", text, read_plain(text, k).fault); }
+remark misread_of(std::string_view text, kind k) {
+  return wording::quantity("/windings/1/volts", text, read_plain(text, k).fault);
+}
 
 bool whole_utf8(std::string_view s) {
   for (std::size_t i = 0; i < s.size();) {
@@ -64,7 +66,8 @@ TEST_CASE("a known word is its own nearest, and a nearest word is always a known
 TEST_CASE("a quoted text is cut at 60 characters and shows control characters as dots", "[refusal]") {
   CHECK(wording::quoted("230 V") == "\"230 V\"");
   CHECK(wording::quoted("") == "\"\"");
-  CHECK(wording::quoted("a\nb\tc\x7F" "d\x1B[2J") == "\"a.b.c.d.[2J\"");
+  CHECK(wording::quoted("a\nb\tc\x7F"
+                        "d\x1B[2J") == "\"a.b.c.d.[2J\"");
   CHECK(wording::quoted(std::string("a\0b", 3)) == "\"a.b\"");
   CHECK(wording::quoted(std::string(60, 'x')) == "\"" + std::string(60, 'x') + "\"");
   CHECK(wording::quoted(std::string(61, 'x')) == "\"" + std::string(60, 'x') + "...\"");
@@ -120,7 +123,7 @@ TEST_CASE("unknown keys, words and names are refused with the nearest known ones
   CHECK(word.hint == "did you mean \"core\"?");
   const remark name = wording::unknown_name("/core", "manes", "a table of a known name", keys);
   CHECK(name.code == "unknown-name");
-  CHECK(name.hint == "near it stand: mains, name");
+  CHECK(name.hint == "near it stand: mains");
   const remark far = wording::unknown_name("/core", "qqqqqqqqqqqq", "a table of a known name", keys);
   CHECK(far.hint.empty());
 }
