@@ -66,38 +66,59 @@ fixed_parts prepare(const demand& d, const draft& f, const selector_position& at
   return p;
 }
 
-// Electrical state at given copper temperatures: the shunt's figures follow the EMF, which moves little.
-void settle_electric(const demand& d, const draft& f, fixed_parts& p, const std::vector<temperature>& copper, running& r) {
-  const auto hot = [&](std::size_t coil, ohms at_20) { return at_20 * copper::over_20(copper[coil]); };
-  const std::size_t a = coil_index(f, true, 0);
-  const ohms hot_a = hot(a, p.primary_20.a);
-  const ohms hot_b = r.at.tap_b ? hot(coil_index(f, true, 1), p.primary_20.b) : 0_ohm;
-  r.share = share_of(r.at, hot_a, hot_b);
-  p.net.primary_resistance = r.share.resistance;
-  for (std::size_t k = 0; k < p.ports.size(); ++k) p.net.ports[k].resistance = hot(p.ports[k].coil, p.port_20[k]);
-  volts emf = plain(r.electric.emf.plain()) > 0 ? r.electric.emf.plain() : p.net.mains.plain();
-  for (int i = 0; i < 30; ++i) {
-    r.flux_density = peak_flux_density(volts_rms{emf}, d.mains.frequency, p.net.primary_turns, f.core.net_area());
-    r.magnetising = f.core.magnetising_current(r.flux_density, p.net.primary_turns);
-    r.core_loss = f.core.loss(r.flux_density, d.mains.frequency);
-    p.net.core_loss_resistance = emf * emf / r.core_loss;
-    p.net.magnetising_reactance = emf / r.magnetising.plain();
-    r.electric = supply::solve(p.net);
-    const double change = std::abs(plain(r.electric.emf.plain()) / plain(emf) - 1);
-    emf = r.electric.emf.plain();
-    if (change < 1e-12) break;
+// A drafted transformer on its way to the fixed point: resistances follow the temperatures, the shunt follows the EMF.
+class settling {
+ public:
+  settling(const demand& d, const draft& f, running& r)
+      : d_(d), f_(f), r_(r), parts_(prepare(d, f, r.at, r.mains_ratio)), solver_(parts_.net), emf_(parts_.net.mains.plain()) {
+    a_ = coil_index(f, true, 0);
+    if (r.at.tap_b) b_ = coil_index(f, true, 1);
   }
-  r.core_loss = r.electric.core;
-  r.loss_beyond_curve = f.core.loss_beyond_curve(r.flux_density, d.mains.frequency);
 
-  r.coil_loss.assign(f.coils.size(), 0_W);
-  const amperes line = r.electric.primary_current.plain();
-  r.coil_loss[a] += line * line * r.share.a * r.share.a * hot_a;
-  if (r.at.tap_b) r.coil_loss[coil_index(f, true, 1)] += line * line * r.share.b * r.share.b * hot_b;
-  for (std::size_t k = 0; k < p.ports.size(); ++k) r.coil_loss[p.ports[k].coil] += r.electric.copper[k];
-  r.copper_loss = 0_W;
-  for (const watts& w : r.coil_loss) r.copper_loss += w;
-}
+  // One step of the electrical side at the copper temperatures of the running; returns the EMF's relative change.
+  double step() {
+    const auto hot = [&](std::size_t coil, ohms at_20) { return at_20 * copper::over_20(r_.copper[coil]); };
+    const ohms hot_a = hot(a_, parts_.primary_20.a), hot_b = b_ ? hot(*b_, parts_.primary_20.b) : 0_ohm;
+    r_.share = share_of(r_.at, hot_a, hot_b);
+    std::vector<ohms> ports;
+    for (std::size_t k = 0; k < parts_.ports.size(); ++k) ports.push_back(hot(parts_.ports[k].coil, parts_.port_20[k]));
+    solver_.set_resistances(r_.share.resistance, ports);
+    r_.flux_density = peak_flux_density(volts_rms{emf_}, d_.mains.frequency, parts_.net.primary_turns, f_.core.net_area());
+    r_.magnetising = f_.core.magnetising_current(r_.flux_density, parts_.net.primary_turns);
+    solver_.set_shunt(emf_ * emf_ / f_.core.loss(r_.flux_density, d_.mains.frequency), emf_ / r_.magnetising.plain());
+    solver_.solve();
+    const double change = std::abs(plain(solver_.emf()) / plain(emf_) - 1);
+    emf_ = solver_.emf();
+    note_losses(hot_a, hot_b);
+    return change;
+  }
+
+  void finish() {
+    r_.electric = solver_.state();
+    r_.loss_beyond_curve = f_.core.loss_beyond_curve(r_.flux_density, d_.mains.frequency);
+  }
+
+ private:
+  void note_losses(ohms hot_a, ohms hot_b) {
+    const amperes line = solver_.line();
+    r_.core_loss = solver_.core();
+    r_.coil_loss.assign(f_.coils.size(), 0_W);
+    r_.coil_loss[a_] += line * line * r_.share.a * r_.share.a * hot_a;
+    if (b_) r_.coil_loss[*b_] += line * line * r_.share.b * r_.share.b * hot_b;
+    for (std::size_t k = 0; k < parts_.ports.size(); ++k) r_.coil_loss[parts_.ports[k].coil] += solver_.copper(k);
+    r_.copper_loss = 0_W;
+    for (const watts& w : r_.coil_loss) r_.copper_loss += w;
+  }
+
+  const demand& d_;
+  const draft& f_;
+  running& r_;
+  fixed_parts parts_;
+  supply::sine_solver solver_;
+  volts emf_;
+  std::size_t a_ = 0;
+  std::optional<std::size_t> b_;
+};
 
 // Conductivities of layer windings, unimpregnated with imperfect contact (judgement): fine wire with much paper low.
 watts_per_metre_kelvin radial_conductivity(const coil_draft& c) { return c.wires.front().wire.bare < 0.6_mm ? 0.16_W_per_mK : 0.22_W_per_mK; }
@@ -173,8 +194,11 @@ running run_at(const demand& d, const draft& f, const selector_position& at, dou
   r.at = at;
   r.mains_ratio = mains_ratio;
   r.copper = copper;
-  fixed_parts p = prepare(d, f, at, mains_ratio);
-  settle_electric(d, f, p, copper, r);
+  settling electric(d, f, r);
+  for (r.steps = 1; r.steps <= 60; ++r.steps) {
+    if (electric.step() < 1e-12) break;
+  }
+  electric.finish();
   return r;
 }
 
@@ -183,10 +207,10 @@ running run(const demand& d, const draft& f, const selector_position& at, double
   r.at = at;
   r.mains_ratio = mains_ratio;
   r.copper.assign(f.coils.size(), d.limits.ambient + 40_K);
-  fixed_parts p = prepare(d, f, at, mains_ratio);
+  settling electric(d, f, r);
   const thermal::heat_balance balance(heated(d, f));
-  for (r.steps = 1; r.steps <= 60; ++r.steps) {
-    settle_electric(d, f, p, r.copper, r);
+  for (r.steps = 1; r.steps <= 80; ++r.steps) {
+    const double emf_change = electric.step();
     r.heat = balance.solve(r.core_loss, r.coil_loss);
     r.residual_K = 0;
     for (std::size_t i = 0; i < f.coils.size(); ++i) {
@@ -196,8 +220,9 @@ running run(const demand& d, const draft& f, const selector_position& at, double
       r.residual_K = std::max(r.residual_K, std::abs(next.value() - r.copper[i].value()));
       r.copper[i] = next;
     }
-    if (r.residual_K < 1e-8) break;
+    if (r.residual_K < 1e-8 && emf_change < 1e-11) break;
   }
+  electric.finish();
   return r;
 }
 

@@ -108,15 +108,29 @@ kernel::network_si in_si(const sine_network& net) {
 
 }  // namespace
 
-sine_state solve(const sine_network& net) {
+sine_solver::sine_solver(const sine_network& net) : net_(in_si(net)), last_{} {
   if (net.leakage.size() != net.ports.size() * net.ports.size()) throw std::logic_error("leakage matrix of another size");
-  const kernel::state_si s = kernel::solve(in_si(net));
+}
+
+void sine_solver::set_resistances(ohms primary, const std::vector<ohms>& ports) {
+  net_.r1 = plain(primary);
+  for (std::size_t k = 0; k < ports.size(); ++k) net_.ports[k].r = plain(ports[k]);
+}
+
+void sine_solver::set_shunt(ohms core_loss, ohms magnetising) {
+  net_.g_core = 1 / plain(core_loss);
+  net_.b_mag = 1 / plain(magnetising);
+}
+
+void sine_solver::solve() { last_ = kernel::solve(net_); }
+
+sine_state sine_solver::state() const {
+  const kernel::state_si& s = last_;
   sine_state out;
   double output_w = 0;
-  for (std::size_t k = 0; k < net.ports.size(); ++k) {
-    const double ratio = static_cast<double>(net.ports[k].n.count()) / net.primary_turns.count();
-    out.ports.push_back({volts_rms{ratio * net.mains.plain()}, volts_rms{as<volts>(s.v[k])}, amperes_rms{as<amperes>(s.i[k])},
-                         as<watts>(s.load[k])});
+  for (std::size_t k = 0; k < net_.ports.size(); ++k) {
+    out.ports.push_back({volts_rms{as<volts>(net_.mains * net_.ports[k].n / net_.n1)}, volts_rms{as<volts>(s.v[k])},
+                         amperes_rms{as<amperes>(s.i[k])}, as<watts>(s.load[k])});
     out.copper.push_back(as<watts>(s.copper[k]));
     out.shared_current.push_back(amperes_rms{as<amperes>(s.shared[k])});
     output_w += s.load[k];
@@ -130,6 +144,12 @@ sine_state solve(const sine_network& net) {
   out.core = as<watts>(s.core);
   out.output = as<watts>(output_w);
   return out;
+}
+
+sine_state solve(const sine_network& net) {
+  sine_solver solver(net);
+  solver.solve();
+  return solver.state();
 }
 
 }  // namespace turnwright::supply

@@ -60,7 +60,7 @@ struct sine_state {
 /// ports. Source: circuit laws (exact). Checked: tests/supply/sine.cpp.
 sine_state solve(const sine_network& net);
 
-/// The kernel behind `solve`, in plain doubles of SI units; its one door is `solve`.
+/// The kernel, in plain doubles of SI units; its doors are `solve` and `sine_solver`.
 namespace kernel {
 struct port_si {
   double n, r, load;  // load: infinite where open
@@ -77,5 +77,30 @@ struct state_si {
 };
 state_si solve(const network_si& net);
 }  // namespace kernel
+
+/// A network that is solved again and again while resistances and shunt settle: through the door once, in and out.
+class sine_solver {
+ public:
+  /// Throws std::logic_error where the leakage matrix is of another size than the ports.
+  explicit sine_solver(const sine_network& net);
+
+  /// Resistance of the primary in use, and of each port, at working temperature.
+  void set_resistances(ohms primary, const std::vector<ohms>& ports);
+  /// The branch across p: core loss and magnetising reactance, referred to the primary.
+  void set_shunt(ohms core_loss, ohms magnetising);
+  void solve();
+
+  /// Figures of the last solution: volts across p, line current, loss in the core and in a port's own resistance.
+  volts emf() const { return as<volts>(last_.emf); }
+  amperes line() const { return as<amperes>(last_.i1); }
+  watts core() const { return as<watts>(last_.core); }
+  watts copper(std::size_t port) const { return as<watts>(last_.copper[port]); }
+  /// All figures of the last solution.
+  sine_state state() const;
+
+ private:
+  kernel::network_si net_;
+  kernel::state_si last_;
+};
 
 }  // namespace turnwright::supply

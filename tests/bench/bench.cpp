@@ -1,6 +1,7 @@
 /// Speed, measured and never asserted: run turnwright_bench by hand.
 #include <benchmark/benchmark.h>
 
+#include <chrono>
 #include <fstream>
 #include <sstream>
 
@@ -65,6 +66,28 @@ void one_evaluation(benchmark::State& state) {
   state.counters["heat_steps"] = p.made.nominal.steps;
 }
 BENCHMARK(one_evaluation);
+
+// What passing through the quantity-typed door costs of an evaluation: one network in, one state out.
+void door_share_of_an_evaluation(benchmark::State& state) {
+  const demand d = read_job(example("two-el34"), "example", tools(), tables());
+  const design p = plan(d, tools());
+  const supply::sine_network net = amplifier_network();
+  const supply::kernel::network_si si = amplifier_kernel();
+  using clock = std::chrono::steady_clock;
+  const auto timed = [](auto what) {
+    const auto from = clock::now();
+    for (int i = 0; i < 200; ++i) what();
+    return std::chrono::duration<double>(clock::now() - from).count();
+  };
+  double through = 0, kernel_only = 0, evaluation = 0;
+  for (auto _ : state) {
+    through += timed([&] { benchmark::DoNotOptimize(supply::solve(net).primary_current); });
+    kernel_only += timed([&] { benchmark::DoNotOptimize(supply::kernel::solve(si).i1); });
+    evaluation += timed([&] { benchmark::DoNotOptimize(run(d, p.made.coil, p.made.nominal.at, 1.0).residual_K); });
+  }
+  state.counters["door_percent"] = 100 * (through - kernel_only) / evaluation;
+}
+BENCHMARK(door_share_of_an_evaluation)->Unit(benchmark::kMillisecond);
 
 void plan_with_its_core_named(benchmark::State& state) {
   const demand d = read_job(example("two-el34"), "example", tools(), tables());
