@@ -17,9 +17,11 @@ struct shared_options {
 };
 
 void add_shared(CLI::App& command, shared_options& o) {
-  command.add_flag("--json{-}", o.json, "the result as JSON on standard output; --json=FILE writes it to a file");
+  command.add_flag("--json{-}", o.json, "the result as JSON on standard output; --json=FILE writes it to a file")
+      ->multi_option_policy(CLI::MultiOptionPolicy::Throw);
   command.add_flag("--force", o.output.force, "overwrite files that are there already");
-  command.add_option("--tables", o.folders, "folder with the shop's own table rows, put in front of the bundled ones");
+  command.add_option("--tables", o.folders, "folder with the shop's own table rows, put in front of the bundled ones")
+      ->take_all()->expected(1);
 }
 
 void add_plan(CLI::App& app, shared_options& shared, plan_order& order, const CLI::App*& chosen) {
@@ -41,7 +43,7 @@ CLI::App* add_table(CLI::App& app, shared_options& shared, table_order& order, c
                     const CLI::App*& chosen) {
   CLI::App* c = app.add_subcommand(name, about);
   c->add_option("NAME", order.name, "one row; without it the whole table");
-  c->add_flag("--csv", order.csv, "the table as the file it came from, to copy, edit and lay over");
+  c->add_flag("--csv{.}", order.csv, "the table as the file it came from, to copy, edit and lay over; --csv=TABLE another one");
   add_shared(*c, shared);
   c->callback([c, &chosen] { chosen = c; });
   return c;

@@ -1,10 +1,11 @@
 #include "files.hpp"
 
+#include <unistd.h>
+
 #include <cstdio>
 #include <filesystem>
 #include <fstream>
 #include <iostream>
-#include <iterator>
 
 #include <turnwright/remark/wording.hpp>
 
@@ -38,11 +39,18 @@ std::string read_whole(const std::string& path) {
   return text;
 }
 
-void write_whole(const std::string& path, const std::string& text, bool force) {
-  if (!force && std::filesystem::exists(std::filesystem::symlink_status(path))) {
-    throw refused(wording::other("exists", path, "a file that is there already", "a new name", "--force overwrites it"));
+void check_target(const std::string& path, bool force) {
+  const auto there = std::filesystem::symlink_status(path);
+  if (!std::filesystem::exists(there)) return;
+  if (!std::filesystem::is_regular_file(there)) {
+    throw refused(wording::other("unwritable", path, "something that is no ordinary file", "the name of an ordinary file"));
   }
-  const std::string beside = path + ".part";
+  if (!force) throw refused(wording::other("exists", path, "a file that is there already", "a new name", "--force overwrites it"));
+}
+
+void write_whole(const std::string& path, const std::string& text, bool force) {
+  check_target(path, force);
+  const std::string beside = path + ".part" + std::to_string(getpid());
   {
     std::ofstream out(beside, std::ios::binary | std::ios::trunc);
     out << text;

@@ -11,8 +11,11 @@ std::string read_whole(const std::string& path);
 /// How a file is spoken of in messages.
 std::string spoken(const std::string& path);
 
-/// Writes a file whole: beside it first, then in its place. Throws `refused` where the file exists and `force` is not
-/// given, or where it cannot be written; then nothing is left behind.
+/// Throws `refused` where a file may not be written: it exists and `force` is not given, or it is no ordinary file.
+void check_target(const std::string& path, bool force);
+
+/// Writes a file whole: beside it first, then in its place. Throws `refused` like `check_target`, and where
+/// it cannot be written; then nothing is left behind.
 void write_whole(const std::string& path, const std::string& text, bool force);
 
 }  // namespace turnwright::cli

@@ -34,7 +34,7 @@ struct plan_order {
 struct table_order {
   std::optional<std::string> name;
   std::optional<std::string> at, frequency;  ///< of a steel
-  bool csv = false;
+  std::string csv;  ///< name of a table, "." for the command's own; empty: not asked for
   output_wish output;
 };
 

@@ -46,15 +46,17 @@ void refuse_later_parts(const plan_order& order) {
 status run_plan(const plan_order& order, const catalogue& tables, const shop& s, std::ostream& out, std::ostream& aside) {
   refuse_later_parts(order);
   check_codes_of(order);
+  const bool json_file = order.output.json && *order.output.json != "-";
+  if (order.write_job) check_target(*order.write_job, order.output.force);  // all targets before any is written
+  if (json_file) check_target(*order.output.json, order.output.force);
   const job_text job = text_of(order);
   demand d = read_job(job.text, job.origin, s, tables);
   d.accepted = order.accept;
   const design p = plan(d, s);
-  const bool json_out = order.output.json == "-";
   const std::string json = order.output.json ? json_of(p) : "";
   if (order.write_job) write_whole(*order.write_job, job.text, order.output.force);
-  if (order.output.json && !json_out) write_whole(*order.output.json, json, order.output.force);
-  out << (json_out ? json : report_of(p, order.workings));
+  if (json_file) write_whole(*order.output.json, json, order.output.force);
+  out << (order.output.json && !json_file ? json : report_of(p, order.workings));
   if (!p.windable) {
     for (const check& c : p.checks) {
       if (c.weight != level::stop) continue;

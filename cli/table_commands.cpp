@@ -1,3 +1,4 @@
+#include <algorithm>
 #include <ostream>
 
 #include <turnwright/job/result.hpp>
@@ -21,9 +22,12 @@ void deliver(const output_wish& wish, const std::string& text, const std::string
   out << (wish.json == "-" ? json : text);
 }
 
-bool gave_csv(const table_order& order, const catalogue& tables, std::initializer_list<const char*> names, std::ostream& out) {
-  if (!order.csv) return false;
-  for (const char* name : names) out << tables.named(name).text;
+bool gave_csv(const table_order& order, const catalogue& tables, const std::string& own, std::ostream& out) {
+  if (order.csv.empty()) return false;
+  const std::string name = order.csv == "." ? own : order.csv;
+  const std::vector<std::string> known = tables.names();
+  if (std::find(known.begin(), known.end(), name) == known.end()) throw refused(wording::unknown_word("--csv", name, known));
+  out << tables.named(name).text;
   return true;
 }
 
@@ -40,7 +44,7 @@ std::optional<Q> asked(const std::optional<std::string>& text, const char* optio
 }  // namespace
 
 status run_wire(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out) {
-  if (gave_csv(order, tables, {"wire_metric", "wire_awg", "wire_swg"}, out)) return done;
+  if (gave_csv(order, tables, "wire_metric", out)) return done;
   if (order.name) {
     const looked_up_gauge g = s.wire.look_up(*order.name, "wire");
     deliver(order.output, report_of(g, s), json_of(g, s), out);
@@ -55,7 +59,7 @@ status run_wire(const table_order& order, const catalogue& tables, const shop& s
 }
 
 status run_core(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out) {
-  if (gave_csv(order, tables, {"laminations"}, out)) return done;
+  if (gave_csv(order, tables, "laminations", out)) return done;
   if (order.name) {
     const lamination& l = s.patterns.named(*order.name, "core");
     deliver(order.output, report_of(l), json_of(l), out);
@@ -68,7 +72,7 @@ status run_core(const table_order& order, const catalogue& tables, const shop& s
 }
 
 status run_steel(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out) {
-  if (gave_csv(order, tables, {"steels"}, out)) return done;
+  if (gave_csv(order, tables, "steels", out)) return done;
   const auto b = asked<teslas>(order.at, "--at", "0.01 T", "2.2 T");
   const hertz f = asked<hertz>(order.frequency, "--frequency", "10 Hz", "1 kHz").value_or(50_Hz);
   if (order.name) {

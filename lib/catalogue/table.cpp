@@ -35,6 +35,20 @@ split_line split(std::string_view line) {
   return out;
 }
 
+// Whether a line is well-formed UTF-8 as far as lead and following bytes go.
+bool is_utf8(std::string_view s) {
+  for (std::size_t i = 0; i < s.size();) {
+    const auto lead = static_cast<unsigned char>(s[i]);
+    const std::size_t length = lead < 0x80 ? 1 : lead >= 0xC2 && lead < 0xE0 ? 2 : lead >= 0xE0 && lead < 0xF0 ? 3 : lead >= 0xF0 && lead < 0xF5 ? 4 : 0;
+    if (length == 0 || i + length > s.size()) return false;
+    for (std::size_t k = 1; k < length; ++k) {
+      if ((static_cast<unsigned char>(s[i + k]) & 0xC0u) != 0x80u) return false;
+    }
+    i += length;
+  }
+  return true;
+}
+
 std::string_view trimmed(std::string_view s) {
   while (!s.empty() && std::isspace(static_cast<unsigned char>(s.front()))) s.remove_prefix(1);
   while (!s.empty() && std::isspace(static_cast<unsigned char>(s.back()))) s.remove_suffix(1);
@@ -108,6 +122,10 @@ std::vector<row> read_csv(std::string_view text, const std::string& origin) {
     ++line_number;
     if (line.ends_with('\r')) line.remove_suffix(1);
     if (trimmed(line).empty() || line.starts_with('#')) continue;
+    if (!is_utf8(line)) {
+      faults.push_back(wording::other("bad-row", origin + ":" + std::to_string(line_number), "bytes that are no UTF-8", "a text in UTF-8"));
+      continue;
+    }
     split_line parts = split(line);
     for (std::string& cell : parts.cells) cell = std::string(trimmed(cell));
     if (!columns) {

@@ -4,6 +4,8 @@
 #include <cmath>
 #include <numbers>
 
+#include <turnwright/measure/constants.hpp>
+
 namespace turnwright {
 
 std::string_view word_of(stacking s) {
@@ -65,12 +67,11 @@ amperes_rms core_body::magnetising_current(teslas b, turns n) const {
     for (int i = 0; i < samples; ++i) s[static_cast<std::size_t>(i)] = std::sin((i + 0.5) * std::numbers::pi / (2 * samples));
     return s;
   }();
-  constexpr double mu0 = 4e-7 * std::numbers::pi;
   const double l_m = plain(path_), gap_m = plain(joint_gap());
   double squares = 0;
   for (const double sine : sines) {
     const double now = plain(b) * sine;
-    const double ampere_turns = plain(curve_.field(as<teslas>(now))) * l_m + now * gap_m / mu0;
+    const double ampere_turns = plain(curve_.field(as<teslas>(now))) * l_m + now * gap_m / mu0_H_per_m;
     squares += ampere_turns * ampere_turns;
   }
   return amperes_rms{as<amperes>(std::sqrt(squares / samples) / n.count())};

@@ -32,6 +32,7 @@ former former_for(const former_wishes& wishes, const pattern_book& patterns, con
   if (moulded && !wishes.wall) {
     f.winding_width = moulded->winding_width;
     f.winding_height = moulded->winding_height;
+    f.known_how = moulded->known_how;
   }
   if (wishes.winding_width) f.winding_width = *wishes.winding_width;
   if (wishes.winding_height) f.winding_height = *wishes.winding_height;

@@ -20,6 +20,7 @@ struct former {
   metres winding_width;   ///< along the limb
   metres winding_height;  ///< across the window, wall and clearance taken off
   metres clearance;       ///< left free between coil and outer limb
+  standing known_how = standing::memory;  ///< of the room for winding
 };
 
 /// What a job fixes of a former.

@@ -95,6 +95,7 @@ pattern_book::pattern_book(const catalogue& tables) {
       const std::string key = name_key(r.text("lamination"));
       const auto at = std::find_if(patterns_.begin(), patterns_.end(), [&](const lamination& l) { return name_key(l.name) == key; });
       if (at == patterns_.end()) throw refused(wording::other("unknown-name", r.place("lamination"), wording::quoted(r.text("lamination")), "a lamination of the table"));
+      if (!(r.needed("stack_mm") > 0)) throw refused(wording::other("bad-row", r.place("stack_mm"), r.text("stack_mm"), "a stack over zero"));
       at->stacks.push_back(mm(r.needed("stack_mm")));
     } catch (const refused& why) {
       note(why);

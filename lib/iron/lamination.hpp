@@ -38,7 +38,9 @@ bool is_shell(const lamination& l);
 
 /// Mean length of the flux path [m], with quarter-circle corners: straight along window, quarter circles in the corners.
 ///
-///   shell:  2 (c + e) + pi/2 (f/2 + g)/2 ... one loop of half the tongue, yokes and one outer limb
+///   l = 2 (c + e) + pi (r1 + r2),  r1 = (t/4 + y/2) / 2 at the tongue (t/2 in place of t/4 for UI),  r2 = (o/2 + y/2) / 2
+///
+/// c and e the window across and along, t tongue, o outer limb, y yoke.
 ///
 /// Source: method of IEC 60205, derived from geometry; for a scrapless EI it is 11.14 times the window width.
 /// Checked: tests/iron/lamination.cpp.

@@ -1,18 +1,15 @@
 #include <turnwright/iron/steel.hpp>
 
 #include <cmath>
-#include <numbers>
 #include <stdexcept>
+
+#include <turnwright/measure/constants.hpp>
 
 #include <math.h>  // pchip of Boost 1.74 asks for the global isnan
 
 #include <boost/math/interpolators/pchip.hpp>
 
 namespace turnwright {
-
-namespace {
-constexpr double mu0 = 4e-7 * std::numbers::pi;  // H/m, within 1e-9 of the SI's measured constant
-}
 
 struct magnetisation_curve::inside {
   double first_b, first_h, last_b, last_h;
@@ -23,7 +20,7 @@ magnetisation_curve::magnetisation_curve(const std::vector<magnetisation_point>&
   std::vector<double> b, ln_h;
   for (const magnetisation_point& p : points) {
     const double h = plain(p.field);
-    b.push_back(plain(p.value) + (polarisation ? mu0 * h : 0.0));
+    b.push_back(plain(p.value) + (polarisation ? mu0_H_per_m * h : 0.0));
     ln_h.push_back(std::log(h));
     const std::size_t n = b.size();
     if (!(h > 0) || !(b.back() > 0) || (n > 1 && (b[n - 1] <= b[n - 2] || ln_h[n - 1] <= ln_h[n - 2]))) {
@@ -39,7 +36,7 @@ magnetisation_curve::magnetisation_curve(const std::vector<magnetisation_point>&
 amperes_per_metre magnetisation_curve::field(teslas flux_density) const {
   const double b = std::abs(plain(flux_density));
   const double h = b <= inside_->first_b  ? inside_->first_h * b / inside_->first_b
-                   : b >= inside_->last_b ? inside_->last_h + (b - inside_->last_b) / mu0
+                   : b >= inside_->last_b ? inside_->last_h + (b - inside_->last_b) / mu0_H_per_m
                                           : std::exp(inside_->ln_h(b));
   return as<amperes_per_metre>(std::copysign(h, plain(flux_density)));
 }

@@ -56,6 +56,19 @@ std::vector<loss_point> checked_loss_curve(std::vector<placed_loss> points, cons
   return curve;
 }
 
+void check_figures(const steel& s, const row& r) {
+  const std::pair<const char*, double> over_zero[]{{"sheet_mm", plain(s.sheet)}, {"density_kg_per_m3", plain(s.density)},
+                                                   {"loss_w_per_kg", plain(s.rated_loss)}, {"loss_at_t", plain(s.rated_flux_density)},
+                                                   {"loss_at_hz", plain(s.rated_frequency)}, {"flux_nominal_t", plain(s.flux_nominal)},
+                                                   {"flux_high_t", plain(s.flux_high)}};
+  for (const auto& [column, value] : over_zero) {
+    if (!(value > 0)) throw refused(wording::other("bad-row", r.place(column), wording::quoted(r.text(column)), "a figure over zero"));
+  }
+  for (const auto& [column, value] : {std::pair{"stacking_factor_ratio", s.stacking_factor}, std::pair{"hysteresis_ratio", s.hysteresis_ratio}}) {
+    if (!(value > 0 && value <= 1)) throw refused(wording::other("bad-row", r.place(column), wording::quoted(r.text(column)), "a ratio over 0, 1 at most"));
+  }
+}
+
 void read_curves(steel& s, const catalogue& tables, const std::string& place) {
   for (const row& r : tables.named("steel_magnetisation").rows) {
     if (r.text("curve") != s.magnetisation_from) continue;
@@ -142,6 +155,7 @@ steel_book::steel_book(const catalogue& tables) {
   for (const row& r : tables.named("steels").rows) {
     try {
       steel s = read_row(r);
+      check_figures(s, r);
       read_curves(s, tables, r.place());
       grades_.push_back(std::move(s));
     } catch (const refused& why) {

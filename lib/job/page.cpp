@@ -100,7 +100,7 @@ page::page(const json& node, std::string where, std::vector<remark>& faults) : n
 bool page::has(const std::string& key) { return value(key) != nullptr; }
 
 const json* page::value(const std::string& key) {
-  known_.push_back(key);
+  if (std::find(known_.begin(), known_.end(), key) == known_.end()) known_.push_back(key);
   const auto at = node_.find(key);
   return at == node_.end() ? nullptr : &*at;
 }

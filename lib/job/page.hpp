@@ -81,7 +81,6 @@ class page {
   void finish();
 
   void fault(remark r) { faults_.push_back(std::move(r)); }
-  std::vector<remark>& faults() { return faults_; }
   const std::string& where() const { return where_; }
 
  private:

@@ -39,7 +39,7 @@ json wire_json(const wire_pick& w) {
 }
 
 json tap_json(const planned_tap& t) {
-  return {{"at", written(as<volts>(rounded_to(plain(t.at), 5)))}, {"turns", t.n.count()}, {"layer", t.layer}, {"side", t.side}};
+  return {{"at", t.at}, {"turns", t.n.count()}, {"layer", t.layer}, {"side", t.side}};
 }
 
 json half_json(const planned_half& h) {
@@ -53,7 +53,7 @@ json half_json(const planned_half& h) {
 
 json screen_json(const planned_winding& w) {
   return {{"name", w.name}, {"kind", "screen"}, {"purpose", *w.screen == screen_kind::safety ? "safety" : "noise"},
-          {"build_mm", in_mm(w.build)}, {"wrap_mm", in_mm(w.wrap_under)}};
+          {"build_mm", in_mm(w.build)}, {"wrap_under_mm", in_mm(w.wrap_under)}};
 }
 
 void add_place(json& j, const planned_winding& w) {
@@ -81,7 +81,7 @@ json winding_json(const planned_winding& w) {
   if (w.sections.size() > 1) {
     j["sections"] = json::array();
     for (const planned_section& s : w.sections) {
-      j["sections"].push_back({{"from_turn", s.from.count()}, {"to_turn", s.to.count()}, {"wire", wire_json(s.wire)}});
+      j["sections"].push_back({{"from_turn", s.from.count()}, {"to_turn", s.to.count()}, {"wire", wire_json(s.wire)}, {"length_m", figure(s.length)}, {"mass_kg", figure(s.mass)}});
     }
   }
   add_place(j, w);
@@ -117,7 +117,7 @@ json volts_json(const std::vector<std::pair<std::string, volts_rms>>& list) {
 json pair_json(const planned_pair& p) {
   json j{{"between", {p.a, p.b}}, {"working_rms_V", figure(p.working)}, {"working_peak_V", figure(p.peak)}};
   if (p.dc) j["dc_V"] = figure(*p.dc);
-  j["wrap_mm"] = in_mm(p.wrap);
+  if (p.wrap) j["wrap_mm"] = in_mm(*p.wrap);
   j["test_V"] = figure(p.test);
   return j;
 }
@@ -133,7 +133,7 @@ json setting_json(const planned_setting& s) {
 }
 
 json heat_json(const planned_heat& h) {
-  return {{"ambient_C", in_degrees(h.ambient)}, {"winding_rise_K", figure(h.winding_rise)}, {"hot_spot_C", in_degrees(h.hot_spot)}, {"core_rise_K", figure(h.core_rise)}};
+  return {{"at", written(h.position)}, {"ambient_C", in_degrees(h.ambient)}, {"winding_rise_K", figure(h.winding_rise)}, {"hot_spot_C", in_degrees(h.hot_spot)}, {"core_rise_K", figure(h.core_rise)}};
 }
 
 json window_json(const design& p) {

@@ -103,6 +103,9 @@ void read_screens_and_order(reading_desk& desk, page& root) {
     wish.after = after.value_or("primary");
     wish.kind = s.word("kind", {"noise", "safety"}).value_or("noise") == "safety" ? screen_kind::safety : screen_kind::noise;
     s.finish();
+    for (const screen_wish& other : desk.out.screens) {
+      if (other.after == wish.after) desk.faults.push_back(wording::other("repeated-name", s.place("after"), "a second screen on " + wording::quoted(wish.after), "one screen on a winding"));
+    }
     desk.out.screens.push_back(wish);
   });
 }
@@ -226,17 +229,18 @@ void read_aim_and_prices(reading_desk& desk, page& root) {
                   : word == "height" ? aim::height : word == "regulation" ? aim::regulation : aim::cost;
   const bool open = !desk.out.core.lamination || !desk.out.core.stack;
   if (!aim_word && open) desk.assume("/aim", "cost", "the cheapest core that meets every limit");
-  desk.out.prices = {as<per_kilogram>(14), as<per_kilogram>(4)};
+  std::optional<per_kilogram> copper, steel;
   if (auto p = root.object("prices")) {
-    const auto copper = p->quantity<per_kilogram>("copper", "0 /kg", "100000 /kg"), steel = p->quantity<per_kilogram>("steel", "0 /kg", "100000 /kg");
-    if (copper) desk.out.prices.copper = *copper;
-    if (steel) desk.out.prices.steel = *steel;
-    desk.out.prices_given = copper && steel;
+    copper = p->quantity<per_kilogram>("copper", "0 /kg", "100000 /kg");
+    steel = p->quantity<per_kilogram>("steel", "0 /kg", "100000 /kg");
     p->finish();
   }
-  if (!desk.out.prices_given && open && desk.out.goal == aim::cost) {
-    desk.assume("/prices", "copper 14 /kg, steel 4 /kg", "only their ratio matters for the choice (judgement)");
-  }
+  desk.out.prices = {copper.value_or(as<per_kilogram>(14)), steel.value_or(as<per_kilogram>(4))};
+  desk.out.prices_given = copper || steel;
+  const bool matters = desk.out.prices_given || (open && desk.out.goal == aim::cost);
+  const std::string why = "only the ratio of prices matters for a choice (judgement)";
+  if (!copper && matters) desk.assume("/prices/copper", written(desk.out.prices.copper), why);
+  if (!steel && matters) desk.assume("/prices/steel", written(desk.out.prices.steel), why);
 }
 
 }  // namespace turnwright::job_detail

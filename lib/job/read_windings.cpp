@@ -1,5 +1,4 @@
 #include <algorithm>
-#include <cmath>
 
 #include <turnwright/measure/literals.hpp>
 #include <turnwright/measure/written.hpp>
@@ -148,6 +147,7 @@ void read_primary(reading_desk& desk, page& root, const std::optional<volts>& wa
   }
   const auto on = primary->quantity<volts>("on", "10 V", "1000 V");
   p.fixed = read_wishes(desk, *primary);
+  if (p.fixed.tolerance_ratio) desk.faults.push_back(wording::not_yet(primary->place("tolerance"), "a tolerance of the primary", "its taps are whole turns, within one of their ratio"));
   primary->finish();
   if (p.taps.empty() || desk.faults.size() > faults_before) return;  // nothing to be said of `on` before the taps are right
   if (!on) return choose_on(desk, wall, "/primary/on");
@@ -173,10 +173,15 @@ void read_volts(reading_desk& desk, page& w, secondary_wish& out) {
   out.no_load = v->no_load || !on_load;
 }
 
+// One fault for a rectified load, whatever keys it is written with.
 void refuse_rails(page& w) {
-  const std::string hint = "give the winding's own r.m.s. amperes as \"current\" and its volts as \"voltage\"";
-  for (const char* key : {"circuit", "rectifier", "rail", "target", "dc_current", "polarity", "series_capacitor"}) {
-    w.not_yet(key, "a rectified load, which needs the supply solver", hint);
+  const char* first = nullptr;
+  for (const char* key : {"dc_current", "circuit", "rail", "rectifier", "target", "polarity", "series_capacitor"}) {
+    if (w.has(key) && !first) first = key;
+  }
+  if (first) {
+    w.not_yet(first, "a rectified load, which needs the supply solver",
+              "give the winding's own r.m.s. amperes as \"current\" (on the command line: write rms after the current)");
   }
   w.not_yet("load", "a load of a known transformer");
   w.not_yet("leakage_inductance", "the leakage of a known transformer");
@@ -232,10 +237,21 @@ void check_references(reading_desk& desk, const std::string& place) {
         desk.faults.push_back(wording::other("repeated-name", here + "/name", wording::quoted(s.name) + " a second time", "a name of its own for every winding"));
       }
     }
+    std::vector<std::string> others = names;
+    others.erase(others.begin() + static_cast<std::ptrdiff_t>(i));
     for (const auto& [key, other] : {std::pair{"floats_on", s.floats_on}, std::pair{"tap_of", s.tap_of}}) {
       if (other && (!find(desk.out, *other) || *other == s.name)) {
-        desk.faults.push_back(wording::unknown_word(here + "/" + key, *other, names));
+        desk.faults.push_back(wording::unknown_word(here + "/" + key, *other, others));
       }
+    }
+    const secondary_wish* under = s.floats_on ? find(desk.out, *s.floats_on) : nullptr;
+    if (under && (under->floats_on || under->tap_of)) {
+      desk.faults.push_back(wording::other("floats", here + "/floats_on", wording::quoted(*s.floats_on) + ", which itself rides on another winding",
+                                           "a winding that makes its own potential, such as the HT"));
+    }
+    const bool equal_halves = s.centre_tap || (s.second_half && *s.second_half == s.voltage);
+    if (equal_halves && s.fixed.n && s.fixed.n->count() % 2 != 0) {
+      desk.faults.push_back(wording::other("odd-turns", here + "/turns", std::to_string(s.fixed.n->count()) + " turns with a centre tap", "an even number of turns"));
     }
     const secondary_wish* host = s.tap_of ? find(desk.out, *s.tap_of) : nullptr;
     if (host && (host->tap_of || s.voltage >= host->voltage)) {
@@ -256,9 +272,8 @@ winding_wishes read_wishes(reading_desk& desk, page& winding) {
     try {
       const looked_up_gauge found = desk.tools.wire.look_up(*wire, winding.place("wire"));
       if (!found.exact || !film_of(found.wire, desk.out.wire.grade)) {
-        desk.faults.push_back(wording::other("unknown-name", winding.place("wire"), wording::quoted(*wire),
-                                             "a size of the table whose enamel is known",
-                                             "the nearest size is " + wording::quoted(found.wire.size)));
+        desk.faults.push_back(wording::other("unknown-name", winding.place("wire"), wording::quoted(*wire), "a size of the table whose enamel is known",
+                                             found.exact ? "the table has no enamel figures for it" : "the nearest size is " + wording::quoted(found.wire.size)));
       }
       w.wire = *wire;
     } catch (const refused& why) {
@@ -330,8 +345,8 @@ void read_secondaries(reading_desk& desk, page& root) {
   for (std::size_t i = 0; i < desk.out.secondaries.size(); ++i) {
     const secondary_wish& s = desk.out.secondaries[i];
     if (s.fixed.tolerance_ratio) continue;
-    desk.assume("/secondaries/" + std::to_string(i) + "/tolerance", written(ratio{tolerance_of(s)}),
-                is_heater(s) ? "valves stand 5 %, less what the mains takes" : "practice");
+    desk.assume("/secondaries/" + std::to_string(i) + "/tolerance", written(tolerance_of(s)),
+                is_heater(s) ? "valves stand 5 %, less what the mains takes" : s.tap_of ? "a bias must not fall short" : "practice");
   }
 }
 

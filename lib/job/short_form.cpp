@@ -43,7 +43,7 @@ ending read_ending(const std::vector<std::string>& words, std::size_t at, const 
     if (w == "dc") e.dc = true;
     else if (w == "rms") e.rms = true;
     else if (w == "ct") e.centre_tap = true;
-    else if (e.rectifier.empty()) e.rectifier = w;
+    else if (e.rectifier.empty() && (w == "silicon" || w.find_first_of("0123456789") != std::string::npos)) e.rectifier = w;
     else faults.push_back(wording::other("unknown-word", where, wording::quoted(w), "after the current only: rms, dc, ct or a rectifier"));
   }
   if (e.dc && e.rms) faults.push_back(wording::other("either-or", where, "both dc and rms", "one of them"));

@@ -18,7 +18,7 @@ henries inductance_of(ohms x, hertz f);
 ///   B = V / (sqrt(2) pi f N A)
 ///
 /// V is the EMF of the winding; A is the net iron area. Source: law of induction for a sine (exact).
-/// Checked: tests/measure/electrics.cpp, worked examples d02, d03 and d08.
+/// Checked: tests/measure/electrics.cpp, worked examples of three sources.
 teslas peak_flux_density(volts_rms emf, hertz f, turns n, square_metres net_area);
 
 /// Turns, not yet whole, that keep the peak flux density at b: V / (sqrt(2) pi f B A). Source: as above.

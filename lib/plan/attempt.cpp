@@ -12,8 +12,6 @@ using namespace literals;
 
 namespace {
 
-constexpr double comfortable_fill = 0.92;
-
 std::vector<load_ratio> first_guess(const demand& d) {
   // Volts on load over no load by size, from practice (memory); the fixed point replaces it.
   const double va = plain(rating_of(d)), ratio = 1 / (va < 30 ? 1.08 : va > 200 ? 1.04 : 1.06);
@@ -121,13 +119,26 @@ void test_resistances(const demand& d, attempt& a) {
   }
 }
 
+// A room for winding that the job fixes has to be inside the window.
+void test_former(const demand& d, attempt& a) {
+  const lamination& l = a.coil.core.choice().pattern;
+  if (d.former.winding_width) {
+    a.limits.push_back(at_most("window-fit", "winding width that the job fixes, in the window's length", plain(*d.former.winding_width), plain(l.window_length), kind::length));
+  }
+  if (d.former.winding_height) {
+    a.limits.push_back(at_most("window-fit", "winding height that the job fixes, in the window less the wall", plain(*d.former.winding_height),
+                               std::max(0.0, plain(l.window_width - a.coil.room.wall)), kind::length));
+  }
+}
+
 void test_limits(const demand& d, attempt& a) {
   const draft& f = a.coil;
   const limits_wish& l = d.limits;
-  kelvins hottest = 0_K;
-  for (const kelvins& k : a.high.heat.windings) hottest = std::max(hottest, k);
-  a.limits.push_back(at_most("window-fit", "build over winding height", f.too_wide ? 9.99 : f.fill, 1.0, kind::ratio));
-  a.limits.push_back(at_most("heat", "rise of the hottest winding at high mains", plain(hottest), plain(l.temperature_rise), kind::temperature_rise));
+  limit_test fit = at_most("window-fit", "build over winding height", f.fill, 1.0, kind::ratio);
+  fit.holds = fit.holds && !f.too_wide;
+  a.limits.push_back(fit);
+  test_former(d, a);
+  a.limits.push_back(at_most("heat", "rise of the hottest winding at the highest mains", plain(hottest_winding(a.high)), plain(l.temperature_rise), kind::temperature_rise));
   a.limits.push_back(at_most("flux-high", "flux density at nominal mains, no load",
                              plain(flux_at(d, f.core, f.n.primary, a.nominal.at, 1.0)), plain(a.flux.nominal), kind::flux_density));
   a.limits.push_back(at_most("flux-high", "flux density at highest mains on the worst tap", plain(worst_flux(d, f.core, f.n.primary)),
@@ -152,10 +163,8 @@ flux_limits limits_of(const demand& d, const steel& grade) {
 }
 
 std::string summary(const attempt& a) {
-  kelvins hottest = 0_K;
-  for (const kelvins& k : a.high.heat.windings) hottest = std::max(hottest, k);
   return a.coil.core.choice().pattern.name + " x " + shown(a.coil.core.choice().stack) + ", " + shown(a.density) + ": fill " +
-         fixed(100 * a.coil.fill, 1) + " %, rise " + fixed(plain(hottest), 1) + " K, volts " + fixed(100 * a.volts_score, 0) +
+         fixed(100 * a.coil.fill, 1) + " %, rise " + fixed(plain(hottest_winding(a.high)), 1) + " K, volts " + fixed(100 * a.volts_score, 0) +
          " % of tolerance, rounds " + std::to_string(a.rounds) + (a.stood_still ? "" : " (no fixed point)") +
          ", heat steps " + std::to_string(a.nominal.steps) + ", residual " + shortest(rounded_to(a.nominal.residual_K, 2)) + " K";
 }
@@ -181,17 +190,28 @@ double attempt::excess() const {
 
 amperes_per_square_metre worst_density(const demand& d, const draft& f, const running& nominal) {
   amperes_per_square_metre worst = as<amperes_per_square_metre>(0);
-  const bool stepped = std::any_of(f.coils.begin(), f.coils.end(), [](const coil_draft& c) { return c.wires.size() > 1; });
-  const auto single = sizing_currents(d, nominal.electric.primary_current.plain(), false);
-  const auto by_section = sizing_currents(d, nominal.electric.primary_current.plain(), stepped);
-  for (std::size_t i = 0; i < f.coils.size(); ++i) {
-    const auto& currents = f.coils[i].wires.size() > 1 ? by_section[i] : single[i];
-    for (std::size_t k = 0; k < f.coils[i].wires.size(); ++k) {
-      const wire_pick& p = f.coils[i].wires[k];
-      worst = std::max(worst, amperes_per_square_metre(currents[k] / (bare_area(p.wire) * static_cast<double>(p.strands))));
+  for (const selector_position& p : selector_positions(d.primary)) {
+    const primary_resistances r = primary_ohms_20(f, p);
+    const primary_share share = share_of(p, r.a, r.b);
+    const amperes line = nominal.electric.primary_current.plain() * (plain(d.primary.on) / plain(p.at));
+    for (const coil_draft& c : f.coils) {
+      if (!c.role.primary) continue;
+      const bool second = c.role.which == 1;
+      worst = std::max(worst, density_in(c, line * (second ? share.b : share.a), f.n.primary[second ? *p.tap_b : p.tap_a]));
     }
   }
+  const auto ports = ports_of(d, f);
+  for (std::size_t k = 0; k < ports.size(); ++k) {
+    const coil_draft& c = f.coils[ports[k].coil];
+    worst = std::max(worst, density_in(c, nominal.electric.shared_current[k].plain(), total_turns(c.laid)));
+  }
   return worst;
+}
+
+kelvins hottest_winding(const running& r) {
+  kelvins hottest = 0_K;
+  for (const kelvins& k : r.heat.windings) hottest = std::max(hottest, k);
+  return hottest;
 }
 
 double worst_regulation(const running& r) {
@@ -216,6 +236,11 @@ attempt wind(const demand& d, const shop& s, const core_body& core, bool stepped
   const auto try_density = [&](double si) {
     attempt a = settle(d, s, core, flux, as<amperes_per_square_metre>(si), stepped);
     a.high = run(d, a.coil, at, 1 + d.mains.over_ratio);
+    for (const selector_position& p : selector_positions(d.primary)) {
+      if (p.at == at.at) continue;
+      running r = run(d, a.coil, p, 1 + d.mains.over_ratio);
+      if (hottest_winding(r) > hottest_winding(a.high)) a.high = std::move(r);
+    }
     test_limits(d, a);
     workings.push_back({summary(a)});
     return a;
@@ -230,7 +255,7 @@ attempt wind(const demand& d, const shop& s, const core_body& core, bool stepped
   const bool thinner = tight || !holds(best, "rectifier-limits");
   const bool thicker = !holds(best, "heat") || !holds(best, "regulation") || best.volts_score > 1;
   if (!thinner && !thicker) return best;
-  const double step = thinner ? 1.06 : 1 / 1.06, end = thinner ? 4.5e6 : 1.0e6;
+  const double step = thinner ? 1.06 : 1 / 1.06, end = thinner ? plain(d.limits.current_density.value_or(usual_highest_density)) : 1.0e6;
   // Copper shrinks no faster than the density grows, and insulation not at all.
   if (tight && best.coil.fill * start / end > 1.0) return best;
   for (double si = start * step; thinner ? si <= end : si >= end; si *= step) {

@@ -15,7 +15,7 @@ namespace turnwright {
 struct limit_test {
   std::string code;     ///< of the check it belongs to
   std::string what;     ///< "rise of the hottest winding"
-  double found = 0, bound = 0;
+  double found = 0, bound = 0;  ///< in the SI unit of `of`
   kind of = kind::ratio;
   bool holds = true;
   /// How far over the bound, as a ratio; 0 where it holds.
@@ -25,7 +25,7 @@ struct limit_test {
 struct attempt {
   draft coil;
   running nominal;
-  running high;         ///< highest mains, same position
+  running high;         ///< highest mains, at the selector position where a winding gets hottest
   flux_limits flux;
   amperes_per_square_metre density;  ///< the common one that the wires were picked for
   std::vector<limit_test> limits;
@@ -44,8 +44,14 @@ struct attempt {
 amperes_per_square_metre worst_density(const demand& d, const draft& f, const running& nominal);
 /// Regulation of the worst secondary: (no load - on load) / on load.
 double worst_regulation(const running& r);
-/// Iron, copper and formers as far as they are known [kg].
+/// Iron and copper, and a twentieth for former, paper, varnish and leads (judgement) [kg].
 kilograms total_mass(const draft& f);
+/// Average rise of the hottest winding.
+kelvins hottest_winding(const running& r);
+/// Part of the winding height up to which a coil is comfortable to finish (common practice).
+inline constexpr double comfortable_fill = 0.92;
+/// The highest density any winding is given where the job names no limit [A/m2] (judgement).
+inline constexpr amperes_per_square_metre usual_highest_density = as<amperes_per_square_metre>(4.5e6);
 
 /// A line of the search, for --workings.
 struct working {

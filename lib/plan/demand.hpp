@@ -109,7 +109,7 @@ struct demand {
   limits_wish limits;
   aim goal = aim::cost;
   prices_wish prices;
-  bool prices_given = false;
+  bool prices_given = false;  ///< at least one of them
   std::vector<std::string> accepted;  ///< codes of stops that the user goes on past
   std::vector<assumption> assumed;
 };

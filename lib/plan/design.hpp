@@ -11,8 +11,8 @@
 namespace turnwright {
 
 struct planned_tap {
-  volts at;
-  turns n;            ///< from the common start
+  std::string at;     ///< "220 V", "centre tap"
+  turns n;            ///< from the start of the winding it is a tap of
   int layer = 0;
   std::string side;   ///< "start" or "far": the end of the coil it comes out at
   bool mid_layer = false;
@@ -28,6 +28,8 @@ struct planned_half {
 struct planned_section {
   turns from, to;
   wire_pick wire;
+  metres length;      ///< one strand
+  kilograms mass;     ///< all strands
 };
 
 struct planned_winding {
@@ -42,7 +44,7 @@ struct planned_winding {
   int layers = 0;
   turns per_layer, last_layer;
   std::string finish_side;                 ///< where the last turn comes out
-  metres margin, interlayer, build, wrap_under, mean_turn, length;
+  metres margin, interlayer, build, wrap_under, mean_turn, length;  ///< of a screen: foil and what it lies on
   std::string margin_why, interlayer_why, wrap_why;
   kilograms mass;
   ohms resistance_20, resistance_hot;
@@ -53,7 +55,7 @@ struct planned_winding {
   volt_amperes apparent;
   std::optional<double> regulation_ratio;  ///< secondaries
   std::optional<double> error_ratio;       ///< volts found over wanted, less one
-  double tolerance_ratio = 0;
+  std::optional<volts_tolerance> tolerance;
   kelvins rise;                            ///< high mains
   temperature hot_spot;                    ///< high mains
   volts one_turn;
@@ -61,10 +63,10 @@ struct planned_winding {
 
 struct planned_pair {
   std::string a, b;
-  volts_rms working;
+  volts_rms working;             ///< of alternating and direct part together
   volts_peak peak;
   std::optional<volts_dc> dc;
-  metres wrap;
+  std::optional<metres> wrap;    ///< insulation between, foil not counted; absent where air or the cheek is the path
   volts_rms test;
 };
 
@@ -84,6 +86,7 @@ struct planned_state {
 };
 
 struct planned_heat {
+  volts position;       ///< of the mains selector
   temperature ambient;
   kelvins winding_rise, core_rise;
   temperature hot_spot;
@@ -105,7 +108,7 @@ struct planned_test {
 
 struct material {
   std::string what;
-  std::optional<metres> length;    ///< wire, one strand, with waste
+  std::optional<metres> length;    ///< wire, all strands one after the other, with waste
   std::optional<kilograms> mass;   ///< with waste
   std::optional<int> count;
 };
@@ -133,7 +136,6 @@ struct design {
   std::vector<check> checks;
   std::vector<assumption> assumed;
   std::vector<std::string> cautions;
-  std::vector<std::string> footnotes;     ///< figures of weak standing that the plan leans on
   std::vector<working> workings;
 };
 

@@ -1,11 +1,11 @@
 #include <turnwright/plan/draft.hpp>
 
 #include <algorithm>
+#include <cmath>
 #include <numbers>
 #include <stdexcept>
 
 #include <turnwright/measure/literals.hpp>
-#include <turnwright/measure/written.hpp>
 
 namespace turnwright {
 
@@ -30,22 +30,29 @@ std::optional<screen_kind> screen_after(const demand& d, const std::string& name
   return std::nullopt;
 }
 
-metres foil_of(screen_kind k) { return k == screen_kind::safety ? wraps::safety_screen_foil : wraps::screen_foil; }
-
 bool floats(const demand& d, const coil_role& r) { return !r.primary && d.secondaries[r.which].floats_on.has_value(); }
 
 struct wrap {
-  metres thick;
+  metres usual;
   std::string why;
 };
 
-wrap wrap_between(const demand& d, const coil_role* under, const coil_role& over, std::optional<screen_kind> screen) {
+// What practice puts between two windings, or between a winding and a screen.
+wrap usual_wrap(const demand& d, const coil_role* under, const coil_role& over, bool screen) {
   if (!under) return {wraps::over_former, "over the former"};
-  if (screen) return {2.0 * wraps::beside_screen + foil_of(*screen), "screen foil with a wrap on either side"};
-  if (d.insulation.wrap) return {*d.insulation.wrap, "as the job says"};
   if (floats(d, *under) || floats(d, over)) return {wraps::floating_heater, "beside a heater that rides on the HT"};
+  if (screen) return {wraps::beside_screen, "beside a screen"};
   if (under->primary != over.primary) return {wraps::ordinary, "primary to secondary: three layers, any two of which pass the test"};
   return {wraps::ordinary, "three layers of paper"};
+}
+
+void choose_wraps(const demand& d, const coil_role* under, coil_draft& c) {
+  const wrap w = usual_wrap(d, under, c.role, c.screen_under.has_value());
+  c.wrap_usual = w.usual;
+  c.wrap_why = w.why;
+  c.wrap_under = under && d.insulation.wrap ? *d.insulation.wrap : w.usual;
+  if (under && d.insulation.wrap) c.wrap_why = "as the job says";
+  c.wrap_under_screen = c.screen_under ? c.wrap_under : 0_mm;
 }
 
 // Sections of a primary between its taps, each a block where the wires differ; else one block.
@@ -57,32 +64,37 @@ std::vector<turns> sections_of(const demand& d, const turn_set& n, const coil_ro
   return parts;
 }
 
+int film_number(const std::string& grade) { return grade == "1" || grade == "single" ? 1 : grade == "3" ? 3 : 2; }
+
+// Without paper the enamel alone stands between layers: up to 25 V r.m.s., and up to a fortieth of what new wire of that
+// film breaks down at (judgement).
+bool enamel_is_enough(const shop& s, const wire_pick& w, volts_rms between_layers) {
+  const auto breakdown = s.insulation.enamel_breakdown(w.wire.bare, film_number(w.grade));
+  const double enamel_v = breakdown ? plain(breakdown->plain()) / 40 : 0;
+  return plain(between_layers.plain()) <= std::min(25.0, enamel_v);
+}
+
 void choose_insulation(const demand& d, const shop& s, const draft& f, coil_draft& c) {
   const wire_pick& thickest = *std::max_element(c.wires.begin(), c.wires.end(),
                                                 [](const auto& a, const auto& b) { return a.wire.bare < b.wire.bare; });
-  if (d.insulation.margin) {
-    c.margin = *d.insulation.margin;
-    c.margin_why = "as the job says";
-  } else if (f.room.kind == former_kind::bobbin) {
-    c.margin = 0_mm;
-    c.margin_why = "the cheek is the creepage path; tape lapped up it";
-  } else {
-    const reasoned_length m = s.insulation.end_margin(thickest.wire.bare, c.to_core);
-    c.margin = m.value;
-    c.margin_why = m.why;
-  }
+  const bool bobbin = f.room.kind == former_kind::bobbin;
+  const reasoned_length usual = bobbin ? reasoned_length{0_mm, "the cheek is the creepage path; tape lapped up it"}
+                                       : s.insulation.end_margin(thickest.wire.bare, rms_of(c.to_core));
+  c.margin_usual = usual.value;
+  c.margin = d.insulation.margin.value_or(usual.value);
+  c.margin_why = d.insulation.margin ? "as the job says" : usual.why;
   // Volts from layer to layer at the open end, no load, highest mains.
   const block trial{turns{1}, thickest.wire, thickest.overall, thickest.strands, usual_lay(f.room.kind, thickest.overall),
                     c.margin, 0_mm, std::nullopt};
   const double per_turn = highest_mains(d) / turns_in_use(nominal_position(d.primary), f.n.primary).count();
   const int full = std::min(turns_per_layer(trial, f.shape.width).count(), turns_of(d, f.n, c.role).count());
-  const volts_rms between{as<volts>(2 * per_turn * full)};
-  const reasoned_length paper = s.insulation.interlayer(thickest.wire.bare, between);
+  const volts_rms between_layers{as<volts>(2 * per_turn * full)};
+  const reasoned_length paper = s.insulation.interlayer(thickest.wire.bare, between_layers);
   c.interlayer = paper.value;
   c.interlayer_why = paper.why;
-  if (f.room.kind == former_kind::bobbin && plain(between.plain()) <= 25) {
+  if (bobbin && enamel_is_enough(s, thickest, between_layers)) {
     c.interlayer = 0_mm;
-    c.interlayer_why = "under 25 V r.m.s. from layer to layer on a bobbin";
+    c.interlayer_why = "so few volts from layer to layer that the enamel bears them";
   }
   if (d.insulation.interlayer) {
     c.interlayer = *d.insulation.interlayer;
@@ -113,22 +125,43 @@ turns turns_of(const demand& d, const turn_set& n, const coil_role& role) {
   return d.secondaries[role.which].second_half ? s.first + s.second : s.first;
 }
 
-volts_rms working_volts(const demand& d, const turn_set& n, const coil_role& role) {
-  const double highest = highest_mains(d), per_turn = highest / turns_in_use(nominal_position(d.primary), n.primary).count();
-  if (role.primary) {
-    const auto positions = selector_positions(d.primary);
-    return volts_rms{positions.back().at * (1 + d.mains.over_ratio)};
+volts_rms rms_of(const potential& p) { return volts_rms{as<volts>(std::hypot(plain(p.ac.plain()), plain(p.dc.plain())))}; }
+
+volts_peak peak_of(const potential& p) { return volts_peak{p.dc.plain() + peak_of_sine(p.ac).plain()}; }
+
+potential between(const potential& a, const potential& b) {
+  return {volts_rms{a.ac.plain() + b.ac.plain()}, volts_dc{as<volts>(std::abs(plain(a.dc.plain()) - plain(b.dc.plain())))}};
+}
+
+metres foil_of(screen_kind k) { return k == screen_kind::safety ? wraps::safety_screen_foil : wraps::screen_foil; }
+
+metres gap_under(const coil_draft& c) {
+  return c.screen_under ? c.wrap_under + foil_of(*c.screen_under) + c.wrap_under_screen : c.wrap_under;
+}
+
+amperes_per_square_metre density_in(const coil_draft& c, amperes current, turns in_use) {
+  amperes_per_square_metre worst = as<amperes_per_square_metre>(0);
+  turns from{0};
+  for (std::size_t k = 0; k < c.laid.blocks.size(); ++k) {
+    const wire_pick& w = c.wires[k];
+    if (from < in_use) worst = std::max(worst, amperes_per_square_metre(current / (bare_area(w.wire) * static_cast<double>(w.strands))));
+    from = from + c.laid.blocks[k].of.n;
   }
+  return worst;
+}
+
+potential working_volts(const demand& d, const turn_set& n, const coil_role& role) {
+  const double highest = highest_mains(d), per_turn = highest / turns_in_use(nominal_position(d.primary), n.primary).count();
+  if (role.primary) return {volts_rms{selector_positions(d.primary).back().at * (1 + d.mains.over_ratio)}, volts_dc{0_V}};
   const secondary_wish& wish = d.secondaries[role.which];
   const secondary_turns& s = n.secondaries[role.which];
-  double v = per_turn * std::max(s.first, s.second).count();
-  if (wish.floats_on) {
-    std::size_t host = 0;
-    if (named_secondary(d, *wish.floats_on, host)) {
-      v = std::max(v, plain(working_volts(d, n, {*wish.floats_on, false, host}).plain()));
-    }
+  potential p{volts_rms{as<volts>(per_turn * std::max(s.first, s.second).count())}, volts_dc{0_V}};
+  std::size_t host = 0;
+  if (wish.floats_on && named_secondary(d, *wish.floats_on, host)) {
+    const secondary_turns& h = n.secondaries[host];
+    p.dc = volts_dc{peak_of_sine(volts_rms{as<volts>(per_turn * std::max(h.first, h.second).count())}).plain()};
   }
-  return volts_rms{as<volts>(v)};
+  return p;
 }
 
 draft lay_out(const demand& d, const shop& s, const core_body& core, const turn_set& n, const wire_set& wires) {
@@ -141,11 +174,9 @@ draft lay_out(const demand& d, const shop& s, const core_body& core, const turn_
   metres at = 0_m;
   const coil_role* under = nullptr;
   for (std::size_t i = 0; i < roles.size(); ++i) {
-    coil_draft c{roles[i], wires[i], {}, {}, {}, {}, {}, {}, {}, {}, working_volts(d, n, roles[i])};
+    coil_draft c{roles[i], wires[i], {}, {}, {}, {}, {}, {}, {}, {}, {}, {}, {}, working_volts(d, n, roles[i])};
     c.screen_under = under ? screen_after(d, under->name) : std::nullopt;
-    const wrap w = wrap_between(d, under, c.role, c.screen_under);
-    c.wrap_under = w.thick;
-    c.wrap_why = w.why;
+    choose_wraps(d, under, c);
     choose_insulation(d, s, f, c);
     std::vector<block> blocks;
     const std::vector<turns> parts = sections_of(d, n, c.role, c.wires.size());
@@ -153,7 +184,7 @@ draft lay_out(const demand& d, const shop& s, const core_body& core, const turn_
       const wire_pick& p = c.wires[k];
       blocks.push_back({parts[k], p.wire, p.overall, p.strands, usual_lay(room.kind, p.overall), c.margin, c.interlayer, std::nullopt});
     }
-    c.laid = lay(blocks, at + c.wrap_under, f.shape);
+    c.laid = lay(blocks, at + gap_under(c), f.shape);
     for (const laid_block& b : c.laid.blocks) f.too_wide = f.too_wide || b.too_wide;
     at = c.laid.inside + c.laid.build;
     f.coils.push_back(std::move(c));

@@ -46,17 +46,39 @@ std::vector<coil_role> coils_of(const demand& d);
 /// Wires of every coil of `coils_of`: one, or one for each tap section of a primary.
 using wire_set = std::vector<std::vector<wire_pick>>;
 
+/// Highest volts of a winding against the core: no load, highest mains. A winding that floats on another has direct volts.
+struct potential {
+  volts_rms ac;
+  volts_dc dc;
+};
+/// Root of the squares of both parts.
+volts_rms rms_of(const potential& p);
+/// Direct volts and the peak of the alternating ones.
+volts_peak peak_of(const potential& p);
+/// Between two windings: alternating parts at worst in opposite phase.
+potential between(const potential& a, const potential& b);
+
 struct coil_draft {
   coil_role role;
   std::vector<wire_pick> wires;
   laid_winding laid;
-  metres wrap_under;            ///< all that lies between this winding and what is under it, screen included
+  metres wrap_under;            ///< insulation that the winding lies on
   std::string wrap_why;
+  metres wrap_usual;            ///< what practice asks for there, where the job fixes the wrap
   std::optional<screen_kind> screen_under;
+  metres wrap_under_screen;     ///< insulation that the screen lies on; nothing where there is none
   metres margin, interlayer;
+  metres margin_usual;          ///< what gauge and volts ask for, where the job fixes the margin
   std::string margin_why, interlayer_why;
-  volts_rms to_core;            ///< highest working volts against the core, no load, highest mains
+  potential to_core;
 };
+
+/// Thickness of a screen's foil.
+metres foil_of(screen_kind k);
+/// All that lies between a winding and what is under it: wraps and foil.
+metres gap_under(const coil_draft& c);
+/// Highest current density in the wire of a coil's first turns, as many as are in use [A/m2].
+amperes_per_square_metre density_in(const coil_draft& c, amperes current, turns in_use);
 
 struct draft {
   core_body core;
@@ -70,9 +92,9 @@ struct draft {
   bool too_wide = false;
 };
 
-/// Highest volts of a coil against the core [V r.m.s.]: no load, highest mains; a winding that floats on another has the
-/// other's, a centre-tapped one that of its larger half.
-volts_rms working_volts(const demand& d, const turn_set& n, const coil_role& role);
+/// Highest volts of a coil against the core: no load, highest mains. A winding written as halves has those of its larger
+/// half; one that floats on another rides on the direct volts of that one behind a rectifier, which are its peak.
+potential working_volts(const demand& d, const turn_set& n, const coil_role& role);
 
 /// Lays out a coil. Wires have to match `coils_of(d)`.
 draft lay_out(const demand& d, const shop& s, const core_body& core, const turn_set& n, const wire_set& wires);

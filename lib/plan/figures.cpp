@@ -26,16 +26,16 @@ class assembly {
   design finish() {
     out_.turns_per_volt = turns_in_use(at(), coil().n.primary).count() / plain(d_.primary.on);
     for (std::size_t i = 0; i < coil().coils.size(); ++i) {
-      if (coil().coils[i].screen_under) out_.windings.push_back(screen(*coil().coils[i].screen_under));
+      if (coil().coils[i].screen_under) out_.windings.push_back(screen(*coil().coils[i].screen_under, coil().coils[i].wrap_under_screen));
       out_.windings.push_back(winding(i));
       add_taps_of(i);
     }
-    if (coil().screen_outside) out_.windings.push_back(screen(*coil().screen_outside));
+    if (coil().screen_outside) out_.windings.push_back(screen(*coil().screen_outside, wraps::beside_screen));
     add_core();
     add_heat();
     add_settings();
     add_states();
-    out_.pairs = pairs_of(d_, coil(), s_.insulation);
+    out_.pairs = pairs_of(coil(), s_.insulation);
     out_.leakage = leakages_of(coil());
     out_.materials = materials_of(out_);
     out_.tests = tests_of(out_);
@@ -47,13 +47,12 @@ class assembly {
   const running& nominal() const { return out_.made.nominal; }
   const selector_position& at() const { return out_.made.nominal.at; }
 
-  planned_winding screen(screen_kind k) const {
+  planned_winding screen(screen_kind k, metres lies_on) const {
     planned_winding w;
     w.name = "screen";
     w.screen = k;
-    w.build = k == screen_kind::safety ? wraps::safety_screen_foil : wraps::screen_foil;
-    w.wrap_under = wraps::beside_screen;
-    w.wrap_why = "either side of the foil";
+    w.build = foil_of(k);
+    w.wrap_under = lies_on;
     return w;
   }
 
@@ -80,7 +79,9 @@ class assembly {
     w.mass = copper_mass(c.laid);
     turns done{0};
     for (const laid_block& b : c.laid.blocks) {
-      w.sections.push_back({done, done + b.of.n, c.wires[w.sections.size()]});
+      const wire_pick& wire = c.wires[w.sections.size()];
+      const metres length = wire_length(c.laid, done, done + b.of.n);
+      w.sections.push_back({done, done + b.of.n, wire, length, length * mass_per_metre(wire.wire) * static_cast<double>(wire.strands)});
       done = done + b.of.n;
     }
     w.resistance_20 = resistance_20(c.laid, turns{0}, w.n);
@@ -100,25 +101,23 @@ class assembly {
     const bool second = c.role.which == 1;
     for (std::size_t k = 0; k < d_.primary.taps.size(); ++k) {
       const turn_place p = place_of(c.laid, coil().n.primary[k]);
-      w.taps.push_back({d_.primary.taps[k], coil().n.primary[k], p.layer, side_word(p.at_start_side), !p.layer_end});
+      w.taps.push_back({written(d_.primary.taps[k]), coil().n.primary[k], p.layer, side_word(p.at_start_side), !p.layer_end});
     }
-    const volts mains = at().at;
     const double in_use = turns_in_use(at(), coil().n.primary).count();
-    w.no_load = volts_rms{mains * (w.n.count() / in_use)};
-    w.on_load = volts_rms{nominal().electric.emf.plain() * (w.n.count() / in_use)};
+    const turns own = coil().n.primary[second ? *at().tap_b : at().tap_a];
+    const volts terminal = nominal().electric.terminal.plain() * (own.count() / in_use);
+    w.one_turn = nominal().electric.emf.plain() / in_use;
+    w.no_load = volts_rms{at().at * (w.n.count() / in_use)};
+    w.on_load = volts_rms{terminal + static_cast<double>((w.n - own).count()) * w.one_turn};  // beyond the tap in use no current flows
     w.current = amperes_rms{nominal().electric.primary_current.plain() * (second ? nominal().share.b : nominal().share.a)};
-    w.density = density_in(w, w.current);
-    w.one_turn = mains / in_use;
-    const std::size_t tap = second ? *at().tap_b : at().tap_a;
-    const volts own = mains * (coil().n.primary[tap].count() / in_use);
-    w.apparent = apparent_power(volts_rms{own}, w.current);
-    w.tolerance_ratio = 0;
+    w.density = density_in(c, w.current.plain(), own);
+    w.apparent = apparent_power(volts_rms{terminal}, w.current);
   }
 
   void secondary_figures(planned_winding& w, std::size_t coil_number) const {
     const secondary_wish& wish = d_.secondaries[coil().coils[coil_number].role.which];
     volts no_load = 0_V, on_load = 0_V;
-    amperes most = 0_A, through = 0_A;
+    amperes through = 0_A;
     double error = 0;
     w.apparent = 0_VA;
     for (std::size_t k = 0; k < ports_.size(); ++k) {
@@ -127,7 +126,6 @@ class assembly {
       const supply::port_state& s = nominal().electric.ports[k];
       no_load += s.no_load.plain();
       on_load += s.on_load.plain();
-      most = std::max(most, s.current.plain());
       through = std::max(through, current_through(k));
       w.apparent += apparent_power(s.on_load, s.current);
       const volts wanted = p.half == 1 ? *wish.second_half : wish.voltage;
@@ -135,13 +133,18 @@ class assembly {
       if (std::abs(off) > std::abs(error)) error = off;
     }
     add_halves(w, wish, coil_number);
+    if (w.halves.size() == 2) {
+      const laid_winding& laid = coil().coils[coil_number].laid;
+      const turn_place place = place_of(laid, w.halves[0].n);
+      w.taps.push_back({"centre tap", w.halves[0].n, place.layer, side_word(place.at_start_side), !place.layer_end});
+    }
     w.no_load = volts_rms{no_load};
     w.on_load = volts_rms{on_load};
     w.current = amperes_rms{through};
-    w.density = density_in(w, w.current);
+    w.density = density_in(coil().coils[coil_number], through, w.n);
     w.regulation_ratio = quotient(w.no_load, w.on_load) - 1;
     w.error_ratio = error;
-    w.tolerance_ratio = tolerance_of(wish);
+    w.tolerance = tolerance_of(wish);
     w.one_turn = on_load / static_cast<double>(w.n.count());
   }
 
@@ -152,14 +155,6 @@ class assembly {
       if (ports_[m].inside == port) most = std::max(most, nominal().electric.shared_current[m].plain());
     }
     return most;
-  }
-
-  amperes_per_square_metre density_in(const planned_winding& w, amperes_rms a) const {
-    amperes_per_square_metre worst = as<amperes_per_square_metre>(0);
-    for (const planned_section& s : w.sections) {
-      worst = std::max(worst, amperes_per_square_metre(a.plain() / (bare_area(s.wire.wire) * static_cast<double>(s.wire.strands))));
-    }
-    return worst;
   }
 
   void add_halves(planned_winding& w, const secondary_wish& wish, std::size_t i) const {
@@ -195,8 +190,9 @@ class assembly {
       w.name = wish.name;
       w.tap_of = host.name;
       w.n = p.to - p.from;
-      const turn_place place = place_of(laid, p.from.count() > 0 ? p.from : p.to);
-      w.taps.push_back({s.no_load.plain(), w.n, place.layer, side_word(place.at_start_side), !place.layer_end});
+      const turns out = p.from.count() > 0 ? p.from : p.to;
+      const turn_place place = place_of(laid, out);
+      w.taps.push_back({written(wish.voltage), out, place.layer, side_word(place.at_start_side), !place.layer_end});
       w.sections = host.sections;
       w.layers = place_of(laid, p.to).layer - place_of(laid, turns{p.from.count() + 1}).layer + 1;
       w.per_layer = host.per_layer;
@@ -208,12 +204,12 @@ class assembly {
       w.no_load = s.no_load;
       w.on_load = s.on_load;
       w.current = s.current;
-      w.density = density_in(w, w.current);
+      w.density = density_in(coil().coils[coil_number], w.current.plain(), p.to);
       w.loss = 0_W;
       w.apparent = apparent_power(s.on_load, s.current);
       w.regulation_ratio = quotient(s.no_load, s.on_load) - 1;
       w.error_ratio = plain((wish.no_load ? s.no_load : s.on_load).plain()) / plain(wish.voltage) - 1;
-      w.tolerance_ratio = tolerance_of(wish);
+      w.tolerance = tolerance_of(wish);
       w.rise = host.rise;
       w.hot_spot = host.hot_spot;
       w.one_turn = s.on_load.plain() / static_cast<double>(w.n.count());
@@ -231,9 +227,8 @@ class assembly {
   }
 
   planned_heat heat_of(const running& r) const {
-    kelvins hottest = 0_K;
-    for (const kelvins& k : r.heat.windings) hottest = std::max(hottest, k);
-    return {d_.limits.ambient, hottest, r.heat.core, d_.limits.ambient + hottest * hot_spot_over_average};
+    const kelvins hottest = hottest_winding(r);
+    return {r.at.at, d_.limits.ambient, hottest, r.heat.core, d_.limits.ambient + hottest * hot_spot_over_average};
   }
 
   void add_heat() {
@@ -250,15 +245,11 @@ class assembly {
       const running r = run_at(d_, coil(), p, 1.0, nominal().copper);
       planned_setting s{p.at, links_of(p, d_.primary), turns_in_use(p, coil().n.primary), r.electric.primary_current,
                         as<amperes_per_square_metre>(0), flux_at(d_, coil().core, coil().n.primary, p, 1.0), on_load(r)};
-      for (const planned_winding& w : out_.windings) {
-        if (!w.primary) continue;
-        const bool second = w.name == "primary B";
-        const std::size_t tap = second ? p.tap_b.value_or(0) : p.tap_a;
-        const amperes a = r.electric.primary_current.plain() * (second ? r.share.b : r.share.a);
-        for (const planned_section& part : w.sections) {
-          if (part.from >= coil().n.primary[tap]) continue;
-          s.density = std::max(s.density, amperes_per_square_metre(a / (bare_area(part.wire.wire) * static_cast<double>(part.wire.strands))));
-        }
+      for (const coil_draft& c : coil().coils) {
+        if (!c.role.primary) continue;
+        const bool second = c.role.which == 1;
+        const amperes own = r.electric.primary_current.plain() * (second ? r.share.b : r.share.a);
+        s.density = std::max(s.density, density_in(c, own, coil().n.primary[second ? *p.tap_b : p.tap_a]));
       }
       out_.settings.push_back(std::move(s));
     }

@@ -18,9 +18,8 @@ std::vector<material> materials_of(const design& p) {
   for (const planned_winding& w : p.windings) {
     if (w.screen || w.tap_of) continue;
     for (const planned_section& s : w.sections) {
-      const double part = static_cast<double>((s.to - s.from).count()) / w.n.count();
-      all.push_back({"wire " + s.wire.wire.size + " for " + w.name,
-                     w.length * part * wire_waste * static_cast<double>(s.wire.strands), w.mass * part * wire_waste, std::nullopt});
+      all.push_back({"wire " + s.wire.wire.size + " for " + w.name, s.length * wire_waste * static_cast<double>(s.wire.strands),
+                     s.mass * wire_waste, std::nullopt});
     }
   }
   const core_body& core = p.made.coil.core;

@@ -2,7 +2,6 @@
 
 #include <algorithm>
 #include <functional>
-#include <limits>
 
 #include <turnwright/measure/electrics.hpp>
 #include <turnwright/measure/literals.hpp>
@@ -189,20 +188,20 @@ std::optional<std::string> cure_by_flux(const demand& d, const shop& s, const co
   return std::nullopt;
 }
 
-// Every shell pattern with its stacks, lightest first, whatever the wire system.
-std::vector<core_body> cores_of_all_families(const demand& d, const shop& s) {
-  return cores_where(d, s, [](const lamination& l) { return is_shell(l); });
-}
-
+// Other cores: of the same family first and the next heavier before all others.
 std::optional<std::string> cure_by_core(const demand& d, const shop& s, const core_body& core) {
   demand open = d;
   open.core.lamination.reset();
   open.core.stack.reset();
+  std::vector<core_body> others = cores_where(open, s, [](const lamination& l) { return is_shell(l); });
+  const auto turn = [&](const core_body& c) {
+    return (c.choice().pattern.family == core.choice().pattern.family ? 0 : 2) + (c.mass() > core.mass() ? 0 : 1);
+  };
+  std::stable_sort(others.begin(), others.end(), [&](const core_body& a, const core_body& b) { return turn(a) < turn(b); });
   std::vector<working> unused;
-  for (const core_body& other : cores_of_all_families(open, s)) {
-    const bool same_family = !d.core.lamination || other.choice().pattern.family == core.choice().pattern.family;
-    if (!same_family || other.mass() <= core.mass() || hopelessly_small(d, s, other)) continue;
-    if (wind_either_way(open, s, other, unused).windable()) return "the next core: " + named(other);
+  for (const core_body& other : others) {
+    if (hopelessly_small(d, s, other)) continue;
+    if (wind(open, s, other, false, unused).windable()) return (other.mass() > core.mass() ? "the next core: " : "another core: ") + named(other);
   }
   return std::nullopt;
 }
@@ -215,7 +214,7 @@ std::string cure_for(const demand& d, const shop& s, const core_body& core) {
   for (const auto& way : ways) {
     if (const auto cure = way()) return *cure;
   }
-  return "nothing that was tried: no other wire, stack, flux or core of the tables clears it; relax the limit or what is fixed";
+  return "nothing that was tried clears it: wire, turns, stack, flux, and every core of the tables in this steel; relax a limit or what is fixed";
 }
 
 }  // namespace
@@ -234,13 +233,21 @@ void add_choices(const demand& d, design& p) {
   const auto assume = [&](bool open, std::string path, std::string value, std::string why) {
     if (open) p.assumed.push_back({std::move(path), std::move(value), std::move(why)});
   };
-  assume(!d.core.lamination, "/core/lamination", c.pattern.name, "chosen by the aim among those that meet every limit");
-  assume(!d.core.stack, "/core/stack", written(c.stack), "chosen by the aim among the usual stacks");
+  assume(!d.core.lamination, "/core/lamination", c.pattern.name, std::string("chosen by the aim from the ") + (d.wire.system == wire_system::awg ? "inch" : "metric") + " E-I patterns that meet every limit with room to spare");
+  assume(!d.core.stack, "/core/stack", shown(c.stack, 4), "chosen by the aim among the usual stacks");
   assume(!d.core.stacking_factor, "/core/stacking_factor", written(ratio{c.stacking_factor}), "a stack laid by hand, by sheet (memory)");
   assume(!d.limits.flux_density, "/limits/flux_density", written(p.made.flux.nominal), "quiet working peak of " + c.grade.name + " (memory)");
   assume(!d.limits.flux_density_high, "/limits/flux_density_high", written(p.made.flux.high), "just under the knee of " + c.grade.name);
-  assume(!d.former.wall, "/former/wall", written(p.made.coil.room.wall), "practice");
+  assume(!d.former.wall, "/former/wall", shown(p.made.coil.room.wall, 3), "practice");
   assume(d.screens.empty(), "/screens", "none", "the job asks for none");
+  const draft& f = p.made.coil;
+  assume(true, "bulge", fixed(f.shape.bulge, 2), std::string("of a coil wound by ") + (d.by_hand ? "hand" : "machine") + " (judgement)");
+  assume(true, "clearance", shown(f.room.clearance, 2), "from coil to outer limb (practice)");
+  assume(true, "outer wrap", shown(wraps::outer, 2), "abrasion and label (practice)");
+  assume(true, "lay", f.room.kind == former_kind::layers ? "90 %, 87 % over 1 mm" : "95 %, 93 % over 0.4 mm, 87 % over 1 mm",
+         "part of the width that turns fill (practice)");
+  assume(true, "building factor", fixed(f.core.building_factor(), 2), "loss of the stacked core over that of the sheet (memory)");
+  assume(true, "joint gap", shown(f.core.joint_gap(), 2), "equivalent gap of the joints in the loop (memory)");
 }
 
 }  // namespace
@@ -254,6 +261,10 @@ design plan(const demand& d, const shop& s) {
   out.workings = std::move(workings);
   add_choices(d, out);
   out.checks = checks_of(out, stands ? "" : cure_for(d, s, core));
+  // Only what really stands in the way counts as gone past.
+  std::erase_if(out.wanted.accepted, [&](const std::string& code) {
+    return std::none_of(out.checks.begin(), out.checks.end(), [&](const check& c) { return c.weight == level::stop && c.code == code; });
+  });
   out.windable = std::none_of(out.checks.begin(), out.checks.end(), [&](const check& c) {
     return c.weight == level::stop && std::find(d.accepted.begin(), d.accepted.end(), c.code) == d.accepted.end();
   });

@@ -22,8 +22,9 @@ double cost_of(const demand& d, const draft& f);
 /// Figures of an attempt, all that the reports show; without checks and cures.
 design figures_of(const demand& d, const shop& s, attempt a);
 
-/// Insulation between neighbours and to the core, with test volts.
-std::vector<planned_pair> pairs_of(const demand& d, const draft& f, const insulation_book& book);
+/// Insulation between neighbours, to screens and to the core, with test volts.
+/// Source: trade practice for what stands between what; test volts recalled.
+std::vector<planned_pair> pairs_of(const draft& f, const insulation_book& book);
 /// Leakage of every pair of windings, a primary first.
 std::vector<planned_leakage> leakages_of(const draft& f);
 /// What to buy, with waste.
@@ -35,7 +36,7 @@ std::vector<planned_test> tests_of(const design& p);
 /// clears what stands in the way; empty where nothing does.
 std::vector<check> checks_of(const design& d, const std::string& cure);
 
-/// Names of steel and stack used where the job is silent.
+/// Name of the steel used where the job is silent.
 inline constexpr std::string_view usual_steel = "M400-50A";
 
 /// Cautions for winding and testing. Source: trade practice; own words.

@@ -26,7 +26,8 @@ ohms load_of(const secondary_wish& w, int half) {
   return v / w.current.plain();
 }
 
-metres height_of(const draft& f, const coil_draft& c) { return f.shape.width - 2.0 * c.margin; }
+// Never nothing, so that a coil whose margins leave no room still has finite figures beside its stop.
+metres height_of(const draft& f, const coil_draft& c) { return std::max(f.shape.width - 2.0 * c.margin, 1_mm); }
 
 stray_coil primary_coil(const draft& f, const selector_position& at) {
   const coil_draft& a = f.coils[coil_index(f, true, 0)];
@@ -134,13 +135,14 @@ thermal::heated_coil heated(const demand& d, const draft& f) {
   h.former_air = 0.2_mm;
   h.former_wall = f.room.wall;
   h.outer_wrap = f.shape.bulge * wraps::outer;
-  h.end_space = f.room.cheek + f.coils.back().margin;
   h.core_surface = f.core.exposed_surface();
   h.core_height = l.height;
   h.ambient = d.limits.ambient;
   for (const coil_draft& c : f.coils) {
     const stray_piece span = span_of(f, c, turns{0}, total_turns(c.laid));
-    h.windings.push_back({span.inner, span.outer, height_of(f, c), radial_conductivity(c), axial_conductivity(c)});
+    // The former sits loosely: what lies on it is that much further out than the drawing says.
+    h.windings.push_back({span.inner + h.former_air, span.outer + h.former_air, height_of(f, c), f.room.cheek + c.margin,
+                          radial_conductivity(c), axial_conductivity(c)});
   }
   return h;
 }
@@ -226,13 +228,13 @@ running run(const demand& d, const draft& f, const selector_position& at, double
   return r;
 }
 
-no_load_state no_load(const demand& d, const draft& f, const selector_position& at, double mains_ratio) {
+no_load_state no_load(const demand& d, const draft& f, const selector_position& at) {
   const turns n = turns_in_use(at, f.n.primary);
-  const volts mains = at.at * mains_ratio;
+  const volts mains = at.at;
   no_load_state s;
-  s.flux_density = peak_flux_density(volts_rms{mains}, d.mains.frequency, n, f.core.net_area());
-  s.core_loss = f.core.loss(s.flux_density, d.mains.frequency);
-  const amperes magnetising = f.core.magnetising_current(s.flux_density, n).plain(), active = s.core_loss / mains;
+  const teslas flux = peak_flux_density(volts_rms{mains}, d.mains.frequency, n, f.core.net_area());
+  s.core_loss = f.core.loss(flux, d.mains.frequency);
+  const amperes magnetising = f.core.magnetising_current(flux, n).plain(), active = s.core_loss / mains;
   const primary_resistances r = primary_ohms_20(f, at);
   const amperes total = as<amperes>(std::hypot(plain(magnetising), plain(active)));
   s.current = amperes_rms{total};

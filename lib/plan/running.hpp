@@ -47,12 +47,11 @@ std::vector<henries> leakage_matrix(const draft& f, const selector_position& at,
 
 /// No-load current and power at a position, nominal mains.
 struct no_load_state {
-  teslas flux_density;
   amperes_rms current;     ///< magnetising and loss component in quadrature
   watts core_loss;
   watts power;             ///< core loss and the primary's copper at that current, cold
 };
-no_load_state no_load(const demand& d, const draft& f, const selector_position& at, double mains_ratio = 1.0);
+no_load_state no_load(const demand& d, const draft& f, const selector_position& at);
 
 /// Resistance at 20 degC of each primary winding as far as it is in use.
 struct primary_resistances {

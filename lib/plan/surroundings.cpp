@@ -1,37 +1,40 @@
 #include <algorithm>
-#include <cmath>
+#include <numbers>
 
 #include <turnwright/plan/plan.hpp>
 
 namespace turnwright {
 namespace {
 
-// Volts between two neighbours: against each other at worst opposite in phase; between primary and secondary, whose
-// common end is at earth on one side, the larger of the two.
-volts_rms between(const coil_draft& a, const coil_draft& b) {
-  if (a.role.primary != b.role.primary) return std::max(a.to_core, b.to_core);
-  return volts_rms{a.to_core.plain() + b.to_core.plain()};
-}
+std::optional<volts_dc> dc_in(const potential& p) { return plain(p.dc.plain()) > 0 ? std::optional(p.dc) : std::nullopt; }
 
-std::optional<volts_dc> riding(const demand& d, const coil_draft& c) {
-  if (c.role.primary || !d.secondaries[c.role.which].floats_on) return std::nullopt;
-  return volts_dc{peak_of_sine(c.to_core).plain()};  // of the winding it floats on, no load, highest mains
+// The test follows the peak: a winding at direct volts is tested like one whose sine has that peak.
+planned_pair pair_of(std::string a, std::string b, const potential& volts_between, std::optional<metres> wrap, bool mains_to_secondary,
+                     const insulation_book& book) {
+  const volts_rms by_peak{peak_of(volts_between).plain() / std::numbers::sqrt2};
+  return {std::move(a), std::move(b), rms_of(volts_between), peak_of(volts_between), dc_in(volts_between), wrap,
+          mains_to_secondary ? book.test_reinforced(by_peak) : book.test_basic(by_peak)};
 }
 
 }  // namespace
 
-std::vector<planned_pair> pairs_of(const demand& d, const draft& f, const insulation_book& book) {
+std::vector<planned_pair> pairs_of(const draft& f, const insulation_book& book) {
   std::vector<planned_pair> all;
   for (std::size_t i = 1; i < f.coils.size(); ++i) {
     const coil_draft &a = f.coils[i - 1], &b = f.coils[i];
-    const volts_rms working = between(a, b);
-    const bool mains = a.role.primary != b.role.primary;
-    all.push_back({a.role.name, b.role.name, working, peak_of_sine(working), std::nullopt, b.wrap_under,
-                   mains ? book.test_reinforced(working) : book.test_basic(working)});
+    // Two primaries hang on one supply: no more than its volts can stand between them.
+    const bool both_primary = a.role.primary && b.role.primary;
+    const potential apart = both_primary ? a.to_core : between(a.to_core, b.to_core);
+    const metres wrap = b.screen_under ? b.wrap_under + b.wrap_under_screen : b.wrap_under;
+    all.push_back(pair_of(a.role.name, b.role.name, apart, wrap, a.role.primary != b.role.primary, book));
+    if (b.screen_under) {
+      all.push_back(pair_of(a.role.name, "screen", a.to_core, b.wrap_under_screen, false, book));
+      all.push_back(pair_of(b.role.name, "screen", b.to_core, b.wrap_under, false, book));
+    }
   }
   for (const coil_draft& c : f.coils) {
-    all.push_back({c.role.name, "core", c.to_core, peak_of_sine(c.to_core), riding(d, c), f.room.wall + wraps::over_former,
-                   book.test_basic(c.to_core)});
+    const bool innermost = &c == &f.coils.front();
+    all.push_back(pair_of(c.role.name, "core", c.to_core, innermost ? std::optional(f.room.wall + c.wrap_under) : std::nullopt, false, book));
   }
   return all;
 }
@@ -45,7 +48,7 @@ std::vector<planned_leakage> leakages_of(const draft& f) {
     }
   }
   const auto stray = [&](std::size_t i) {
-    return stray_coil{{span_of(f, f.coils[i], turns{0}, total_turns(f.coils[i].laid))}, f.shape.width - 2.0 * f.coils[i].margin};
+    return stray_coil{{span_of(f, f.coils[i], turns{0}, total_turns(f.coils[i].laid))}, std::max(f.shape.width - 2.0 * f.coils[i].margin, as<metres>(1e-3))};
   };
   std::vector<planned_leakage> all;
   for (std::size_t a = 0; a < order.size(); ++a) {

@@ -5,6 +5,7 @@
 #include <limits>
 
 #include <turnwright/measure/electrics.hpp>
+#include <turnwright/measure/written.hpp>
 
 namespace turnwright {
 namespace {
@@ -28,32 +29,51 @@ bool keeps_flux(const demand& d, const core_body& core, const flux_limits& limit
          worst_flux(d, core, taps) <= limits.high * hair;
 }
 
+// The whole number nearest to `wanted`, or a neighbour whose volts suit the winding's tolerance better.
+turns best_near(const secondary_wish& w, double wanted, double& error) {
+  const int step = w.centre_tap ? 2 : 1, least = step;
+  const int middle = step == 2 ? nearest_even(wanted).count() : nearest(wanted).count();
+  turns best{std::max(least, middle)};
+  error = volts_error(w, best.count() / wanted);
+  for (const int n : {middle - step, middle + step}) {
+    if (n >= least && volts_error(w, n / wanted) < error - 1e-12) {
+      best = turns{n};
+      error = volts_error(w, n / wanted);
+    }
+  }
+  return best;
+}
+
+secondary_turns halves_near(const secondary_wish& w, double first, double second, double& error) {
+  double error_first = 0, error_second = 0;
+  secondary_turns n;
+  if (plain(*w.second_half) == plain(w.voltage)) {  // equal halves get equal turns
+    n.first = n.second = best_near(w, (first + second) / 2, error_first);
+    error = std::max(volts_error(w, n.first.count() / first), volts_error(w, n.second.count() / second));
+    return n;
+  }
+  n.first = best_near(w, first, error_first);
+  n.second = best_near(w, second, error_second);
+  error = std::max(error_first, error_second);
+  return n;
+}
+
 scored secondaries_for(const demand& d, const tap_turns& taps, const std::vector<load_ratio>& ratios) {
   scored out{{taps, {}}, 0};
   const double in_use = turns_in_use(nominal_position(d.primary), taps).count(), mains = plain(d.primary.on);
   for (std::size_t i = 0; i < d.secondaries.size(); ++i) {
     const secondary_wish& w = d.secondaries[i];
     const double first = plain(w.voltage) / (mains * ratios[i].first) * in_use;
-    secondary_turns n;
     double error = 0;
-    if (w.second_half) {
-      const double second = plain(*w.second_half) / (mains * ratios[i].second) * in_use;
-      const bool equal = plain(*w.second_half) == plain(w.voltage);
-      n.first = nearest(equal ? (first + second) / 2 : first);
-      n.second = equal ? n.first : nearest(second);
-      error = std::max(volts_error(w, n.first.count() / first), volts_error(w, n.second.count() / second));
-    } else {
-      n.first = w.centre_tap ? nearest_even(first) : nearest(first);
-      error = volts_error(w, n.first.count() / first);
-    }
+    secondary_turns n;
     if (w.fixed.n) {  // kept as the winder says; its volts are checked, not chosen
       n.first = w.second_half ? turns{w.fixed.n->count() / 2} : *w.fixed.n;
       if (w.second_half) n.second = *w.fixed.n - n.first;
-      error = 0;
+    } else if (w.second_half) {
+      n = halves_near(w, first, plain(*w.second_half) / (mains * ratios[i].second) * in_use, error);
+    } else {
+      n.first = best_near(w, first, error);
     }
-    const turns least{w.centre_tap ? 2 : 1};
-    n.first = std::max(n.first, least);
-    if (w.second_half) n.second = std::max(n.second, turns{1});
     out.n.secondaries.push_back(n);
     out.score = std::max(out.score, error);
   }
@@ -62,15 +82,26 @@ scored secondaries_for(const demand& d, const tap_turns& taps, const std::vector
 
 }  // namespace
 
-bool is_heater(const secondary_wish& w) { return plain(w.voltage) <= 13 && !w.second_half && !w.no_load && !w.tap_of; }
-
-double tolerance_of(const secondary_wish& w) {
-  if (w.fixed.tolerance_ratio) return *w.fixed.tolerance_ratio;
-  if (w.tap_of) return 0.05;
-  return is_heater(w) ? 0.03 : 0.02;
+bool is_heater(const secondary_wish& w) {
+  const volts whole = w.second_half ? w.voltage + *w.second_half : w.voltage;
+  return plain(whole) <= 13 && !w.no_load && !w.tap_of;
 }
 
-double volts_off(const secondary_wish& w, double found_over_wanted) { return std::abs(found_over_wanted - 1) / tolerance_of(w); }
+volts_tolerance tolerance_of(const secondary_wish& w) {
+  if (w.fixed.tolerance_ratio) return {*w.fixed.tolerance_ratio, *w.fixed.tolerance_ratio};
+  if (w.tap_of) return {0.05, 0.005};
+  return is_heater(w) ? volts_tolerance{0.03, 0.03} : volts_tolerance{0.02, 0.02};
+}
+
+std::string written(const volts_tolerance& t) {
+  if (t.over == t.under) return written(ratio{t.over});
+  return "+" + written(ratio{t.over}) + " -" + written(ratio{t.under});
+}
+
+double volts_off(const secondary_wish& w, double found_over_wanted) {
+  const double off = found_over_wanted - 1;
+  return off > 0 ? off / tolerance_of(w).over : -off / tolerance_of(w).under;
+}
 
 double volts_error(const secondary_wish& w, double found_over_wanted) {
   const bool hot_heater = is_heater(w) && found_over_wanted > 1;

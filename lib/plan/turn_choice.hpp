@@ -3,6 +3,7 @@
 
 #include <turnwright/plan/draft.hpp>
 
+#include <string>
 #include <vector>
 
 namespace turnwright {
@@ -18,11 +19,18 @@ struct flux_limits {
   teslas high;     ///< highest mains, lowest frequency, worst tap
 };
 
-/// Whether a secondary feeds heaters: up to 13 V on load, not written as halves, no tap of another.
+/// Whether a secondary feeds heaters: up to 13 V on load as a whole, no tap of another.
 bool is_heater(const secondary_wish& w);
 
-/// Tolerance of a secondary's volts as a ratio: the job's, else 3 % for heaters, 5 % for a tap, 2 % for the rest.
-double tolerance_of(const secondary_wish& w);
+/// How far volts may lie over and under what is wanted, as ratios.
+struct volts_tolerance {
+  double over, under;
+};
+/// Tolerance of a secondary's volts: the job's either way, else 3 % for heaters, 2 % for the rest, and for a tap (a bias must
+/// not fall short) 5 % over and half a per cent under. Practice and judgement.
+volts_tolerance tolerance_of(const secondary_wish& w);
+/// "3 %" or "+5 % -0.5 %".
+std::string written(const volts_tolerance& t);
 
 /// How far volts lie from what was wanted, as a share of the tolerance; 1 is just at its edge.
 double volts_off(const secondary_wish& w, double found_over_wanted);
@@ -36,7 +44,7 @@ teslas flux_at(const demand& d, const core_body& core, const tap_turns& taps, co
 teslas worst_flux(const demand& d, const core_body& core, const tap_turns& taps);
 
 /// The least worst volts error over all whole numbers of primary turns from the fewest that the flux allows to 6 % more,
-/// to 25 % more where that leaves a tolerance broken. Turns that the job fixes are kept.
+/// to 25 % more where the best of those lies beyond a tolerance (half of it for a heater that would run hot). Turns that the job fixes are kept.
 turn_set choose_turns(const demand& d, const core_body& core, const flux_limits& limits, const std::vector<load_ratio>& ratios);
 /// The secondaries alone, for a primary that stands.
 turn_set choose_secondaries(const demand& d, const tap_turns& primary, const std::vector<load_ratio>& ratios);

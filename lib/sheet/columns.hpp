@@ -19,7 +19,6 @@ class text_table {
   /// Heads of the columns; a head that begins with '<' stands left with its column.
   explicit text_table(std::vector<std::string> heads);
   void add(std::vector<std::string> cells);
-  bool empty() const { return rows_.empty(); }
   /// The table as lines, each indented by two blanks and none with blanks at its end. A table wider than the paper is
   /// cut into parts that repeat the first column.
   std::string text() const;

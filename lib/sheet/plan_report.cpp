@@ -1,7 +1,5 @@
 #include <turnwright/sheet/report.hpp>
 
-#include <algorithm>
-
 #include <turnwright/measure/literals.hpp>
 #include <turnwright/measure/written.hpp>
 #include <turnwright/sheet/columns.hpp>
@@ -36,8 +34,13 @@ std::string wire_text(const wire_pick& w) {
 
 std::string head(const design& p) {
   std::string out = wrapped(p.wanted.title, "");
-  out += p.windable ? "can be wound\n" : "CANNOT BE WOUND as it stands: see the checks marked STOP\n";
-  for (const std::string& code : p.wanted.accepted) out += "gone on past the stop " + code + ", as asked\n";
+  std::string past;
+  for (const std::string& code : p.wanted.accepted) past += (past.empty() ? "" : ", ") + code;
+  if (!p.windable) {
+    out += "CANNOT BE WOUND as it stands: see the checks marked STOP\n";
+  } else {
+    out += past.empty() ? "can be wound\n" : "NOT RIGHT: gone on past these stops, as asked: " + past + "\n";
+  }
   return out + "\n";
 }
 
@@ -83,7 +86,7 @@ std::string winding_table(const design& p) {
   }
   return "Winding, from the core outwards; all in one direction, every start at the same end (mm)\n" + t.text() +
          wrapped("bare and over the enamel: diameter; layers x turns in each, and in the last; margin at each end; paper between layers; wrap "
-                 "under the winding; build without bulge", "  ") + "\n";
+                 "that it lies on; build without bulge. A layer that is not full is spread over the whole width", "  ") + "\n";
 }
 
 std::string ends_part(const design& p) {
@@ -93,17 +96,17 @@ std::string ends_part(const design& p) {
     std::string text;
     if (w.tap_of) {
       const planned_tap& t = w.taps.front();
-      out += wrapped(std::to_string(t.n.count()) + " turns from the centre tap (or start) of " + *w.tap_of + ", leads out in layer " +
-                     std::to_string(t.layer) + " at the " + t.side + " side", "  " + w.name + ": ");
+      out += wrapped("at " + std::to_string(t.n.count()) + " turns of " + *w.tap_of + ", " + std::to_string(w.n.count()) +
+                     " turns from its centre tap or common end (layer " + std::to_string(t.layer) + ", " + t.side + " side" + (t.mid_layer ? ", mid-layer" : "") + ")",
+                     "  " + w.name + ": ");
       continue;
     }
     text = "start 0";
     for (const planned_tap& t : w.taps) {
-      text += "; " + written(t.at) + " at " + std::to_string(t.n.count()) + " (layer " + std::to_string(t.layer) + ", " + t.side + " side" +
+      text += "; " + t.at + " at " + std::to_string(t.n.count()) + " (layer " + std::to_string(t.layer) + ", " + t.side + " side" +
               (t.mid_layer && t.n < w.n ? ", mid-layer" : "") + ")";
     }
-    if (w.halves.size() == 2) text += "; centre tap at " + std::to_string(w.halves[0].n.count());
-    if (w.taps.empty()) text += "; finish at " + std::to_string(w.n.count()) + " (layer " + std::to_string(w.layers) + ", " + w.finish_side + " side)";
+    if (!w.primary) text += "; finish at " + std::to_string(w.n.count()) + " (layer " + std::to_string(w.layers) + ", " + w.finish_side + " side)";
     out += wrapped(text, "  " + w.name + ": ");
   }
   return out + "\n";
@@ -164,7 +167,8 @@ std::string power_part(const design& p) {
     return "hottest winding " + fixed(plain(h.winding_rise), 0) + " K over " + shown(h.ambient) + " on average (hot spot " + shown(h.hot_spot) + "), core " +
            fixed(plain(h.core_rise), 0) + " K";
   };
-  out += labelled("Heat", "at the highest mains: " + heat(p.heat_high));
+  const std::string where = p.settings.size() > 1 ? " on " + written(p.heat_high.position) : "";
+  out += labelled("Heat", "at the highest mains" + where + ": " + heat(p.heat_high));
   out += labelled("", "at nominal mains: " + heat(p.heat_nominal));
   out += labelled("Mass", fixed(plain(p.mass), 2) + " kg in all" + (p.cost ? "; copper and iron cost " + fixed(*p.cost, 2) : ""));
   return out + "\n";
@@ -174,7 +178,7 @@ std::string pairs_part(const design& p) {
   text_table t({"between", "<and", "working V rms", "peak V", "dc V", "wrap mm", "test V rms"});
   for (const planned_pair& pair : p.pairs) {
     t.add({pair.a, pair.b, fixed(plain(pair.working.plain()), 0), fixed(plain(pair.peak.plain()), 0), pair.dc ? fixed(plain(pair.dc->plain()), 0) : "",
-           mm(pair.wrap, 2), fixed(plain(pair.test.plain()), 0)});
+           pair.wrap ? mm(*pair.wrap, 2) : "", fixed(plain(pair.test.plain()), 0)});
   }
   return "Insulation at the highest mains without load\n" + t.text() +
          wrapped("test volts are recalled figures: guidance, not a standard's requirement", "  ") + "\n";
@@ -229,10 +233,11 @@ std::string standing_part(const design& p) {
   note(c.pattern.name, c.pattern.known_how);
   note(c.grade.name, c.grade.known_how);
   for (const planned_winding& w : p.windings) {
-    if (!w.screen && !w.tap_of) note(w.sections.front().wire.wire.size, w.sections.front().wire.wire.known_how);
+    if (w.screen || w.tap_of) continue;
+    for (const planned_section& part : w.sections) note(part.wire.wire.size, part.wire.wire.known_how);
   }
   note("margins, paper and wraps", standing::memory);
-  if (p.made.coil.room.kind == former_kind::bobbin) note("room in the bobbin", standing::estimate);
+  if (p.made.coil.room.kind == former_kind::bobbin) note("room in the bobbin", p.made.coil.room.known_how);
   return wrapped("Standing of table rows that were not read in print (memory = recalled, derived = worked out, estimate): " + weak, "") + "\n";
 }
 

@@ -17,7 +17,7 @@ std::string report_of(const design& p, bool workings);
 std::string report_of(const looked_up_gauge& g, const shop& s);
 /// A lamination with its stacks.
 std::string report_of(const lamination& l);
-/// A steel with its curves; `at` adds the figures at one point.
+/// A steel with its curves; with `flux_density` the figures at that point alone.
 std::string report_of(const steel& s, const std::optional<teslas>& flux_density, hertz frequency);
 
 /// The whole tables, a line each.

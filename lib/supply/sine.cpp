@@ -1,12 +1,14 @@
 #include <turnwright/supply/sine.hpp>
 
+#include <algorithm>
 #include <cmath>
 #include <complex>
 #include <limits>
-#include <numbers>
 #include <stdexcept>
 
 #include <Eigen/Dense>
+
+#include <turnwright/measure/electrics.hpp>
 
 namespace turnwright::supply {
 
@@ -15,8 +17,17 @@ namespace {
 
 using complex = std::complex<double>;
 
-// Impedances of the ports referred to the primary, with each load, each shared resistance and the leakage matrix.
-// Open ports get no row: their current is nothing.
+// Resistance that the currents of two ports meet together: a port's own, a tap's with the half it is a tap of, and of
+// two taps of one half that of the shorter, since both begin at the same end.
+double shared_resistance(const network_si& net, std::size_t k, std::size_t m) {
+  const port_si &a = net.ports[k], &b = net.ports[m];
+  if (k == m) return a.r;
+  if (a.inside == static_cast<int>(m)) return a.r;
+  if (b.inside == static_cast<int>(k)) return b.r;
+  return a.inside >= 0 && a.inside == b.inside ? std::min(a.r, b.r) : 0.0;
+}
+
+// Impedances of the loaded ports referred to the primary. Open ports get no row: their current is nothing.
 Eigen::MatrixXcd port_impedances(const network_si& net, const std::vector<std::size_t>& loaded) {
   const auto size = static_cast<Eigen::Index>(loaded.size());
   Eigen::MatrixXcd z(size, size);
@@ -24,16 +35,31 @@ Eigen::MatrixXcd port_impedances(const network_si& net, const std::vector<std::s
   for (Eigen::Index a = 0; a < size; ++a) {
     for (Eigen::Index b = 0; b < size; ++b) {
       const std::size_t k = loaded[static_cast<std::size_t>(a)], m = loaded[static_cast<std::size_t>(b)];
-      const port_si &pk = net.ports[k], &pm = net.ports[m];
-      const double ratio = net.n1 * net.n1 / (pk.n * pm.n);
-      double r = 0;
-      if (k == m) r = pk.r + pk.load;
-      if (pk.inside == static_cast<int>(m)) r = pk.r;
-      if (pm.inside == static_cast<int>(k)) r = pm.r;
+      const double ratio = net.n1 * net.n1 / (net.ports[k].n * net.ports[m].n);
+      const double r = shared_resistance(net, k, m) + (k == m ? net.ports[k].load : 0.0);
       z(a, b) = complex(r * ratio, net.omega * net.leakage[k * all + m]);
     }
   }
   return z;
+}
+
+// Figures of one port from all currents.
+void note_port(const network_si& net, std::size_t k, const std::vector<complex>& current, complex emf, state_si& s) {
+  const port_si& p = net.ports[k];
+  const std::size_t all = net.ports.size();
+  complex resistive = 0, reactive = 0, through = 0;
+  for (std::size_t m = 0; m < all; ++m) {
+    const port_si& other = net.ports[m];
+    resistive += shared_resistance(net, k, m) * current[m];
+    reactive += complex(0, net.omega * net.leakage[k * all + m]) * current[m] * (p.n / net.n1) * (other.n / net.n1);
+    const bool longer_tap = p.inside >= 0 && other.inside == p.inside && other.r >= p.r;
+    if (m == k || p.inside == static_cast<int>(m) || longer_tap) through += current[m];
+  }
+  s.v[k] = std::abs(emf * (p.n / net.n1) - resistive - reactive);
+  s.i[k] = std::abs(current[k]);
+  s.shared[k] = std::abs(through);
+  s.copper[k] = std::real(std::conj(current[k]) * resistive);
+  s.load[k] = std::isfinite(p.load) ? std::norm(current[k]) * p.load : 0.0;
 }
 
 }  // namespace
@@ -52,39 +78,15 @@ state_si solve(const network_si& net) {
   const complex i1 = emf * admittance;
   const complex terminal = net.mains - i1 * net.source;
 
-  state_si s{std::vector<double>(all), std::vector<double>(all), std::vector<double>(all), std::vector<double>(all),
-             std::vector<double>(all), 0, 0, 0, 0, 0, 0, 0};
   std::vector<complex> current(all, 0.0);
   for (Eigen::Index a = 0; a < size; ++a) {
     const std::size_t k = loaded[static_cast<std::size_t>(a)];
     current[k] = emf * per_volt(a) * net.n1 / net.ports[k].n;
   }
-  for (std::size_t k = 0; k < all; ++k) {
-    const port_si& p = net.ports[k];
-    complex drop = current[k] * p.r, through = current[k];
-    for (std::size_t m = 0; m < all; ++m) {
-      drop += complex(0, net.omega * net.leakage[k * all + m]) * current[m] * (p.n / net.n1) * (net.ports[m].n / net.n1);
-      if (net.ports[m].inside == static_cast<int>(k)) drop += current[m] * net.ports[m].r;
-    }
-    if (p.inside >= 0) {
-      through += current[static_cast<std::size_t>(p.inside)];
-      drop += current[static_cast<std::size_t>(p.inside)] * p.r;
-    }
-    double own_r = p.r;  // without the parts that taps share, which are counted with the taps
-    for (const port_si& m : net.ports) own_r -= m.inside == static_cast<int>(k) ? m.r : 0.0;
-    s.v[k] = std::abs(emf * (p.n / net.n1) - drop);
-    s.i[k] = std::abs(current[k]);
-    s.shared[k] = std::abs(through);
-    s.copper[k] = std::norm(through) * own_r;
-    s.load[k] = std::isfinite(p.load) ? std::norm(current[k]) * p.load : 0.0;
-  }
-  s.i1 = std::abs(i1);
-  s.terminal = std::abs(terminal);
-  s.emf = std::abs(emf);
-  s.input = std::real(terminal * std::conj(i1));
-  s.core = std::norm(emf) * net.g_core;
-  s.copper1 = std::norm(i1) * net.r1;
-  s.apparent = s.terminal * s.i1;
+  const std::vector<double> none(all, 0.0);
+  state_si s{none, none, none, none, none, std::abs(i1), std::abs(terminal), std::abs(emf), std::real(terminal * std::conj(i1)),
+             std::norm(emf) * net.g_core, std::norm(i1) * net.r1, std::abs(terminal) * std::abs(i1)};
+  for (std::size_t k = 0; k < all; ++k) note_port(net, k, current, emf, s);
   return s;
 }
 
@@ -93,7 +95,7 @@ state_si solve(const network_si& net) {
 namespace {
 
 kernel::network_si in_si(const sine_network& net) {
-  kernel::network_si out{plain(net.mains.plain()), 2 * std::numbers::pi * plain(net.frequency),
+  kernel::network_si out{plain(net.mains.plain()), plain(reactance(net.frequency, as<henries>(1))),
                          plain(net.source_resistance), static_cast<double>(net.primary_turns.count()),
                          plain(net.primary_resistance), net.core_loss_resistance ? 1 / plain(*net.core_loss_resistance) : 0.0,
                          net.magnetising_reactance ? 1 / plain(*net.magnetising_reactance) : 0.0, {}, {}};

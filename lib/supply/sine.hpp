@@ -50,8 +50,8 @@ struct sine_state {
   watts input;                   ///< into the primary's terminals
   volt_amperes apparent;         ///< at the primary's terminals
   watts primary_copper;
-  std::vector<watts> copper;     ///< per port; the part shared by a tap and its half is counted with the tap
-  std::vector<amperes_rms> shared_current;  ///< per port: current through the part that a tap shares, else its own
+  std::vector<watts> copper;     ///< per port; what a shared part loses is divided by the currents' shares, and the sum is right
+  std::vector<amperes_rms> shared_current;  ///< per port: current at the far end of a tap's part, with all that flows there
   watts core;
   watts output;
 };

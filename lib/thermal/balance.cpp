@@ -71,7 +71,6 @@ struct heat_balance::network {
     const Eigen::VectorXd rise = base - to_surfaces_ * (excess.asDiagonal() * at);
     const double away = at(0) * core_W_per_K(at(0)) + at(1) * surface_W_per_K(at(1));
     out.core = as<kelvins>(at(0));
-    out.coil_surface = as<kelvins>(at(1));
     for (std::size_t i = 0; i < losses.size(); ++i) out.windings.push_back(as<kelvins>(rise(mean(i))));
     out.to_air = as<watts>(away);
     out.residual = heat.sum() > 0 ? (heat.sum() - away) / heat.sum() : 0.0;
@@ -132,7 +131,7 @@ struct heat_balance::network {
     const heated_winding& w = c_.windings[i];
     const double at = (plain(w.inner) + plain(w.outer)) / 2, thick = plain(w.outer) - plain(w.inner);
     const double half = plain(w.height) / 2, to_face = half / (3 * plain(w.axial));
-    const double cheek = plain(c_.end_space) / k_wall, gap = 0.5e-3 / k_air;
+    const double cheek = plain(w.end_space) / k_wall, gap = 0.5e-3 / k_air;
     const double in_window = 2 * window_length() * thick, at_ends = 2 * end_length(at) * thick;
     join(mean(i), 0, in_window / (to_face + cheek + 1 / (1 / gap + h_gap_radiation)));
     join(mean(i), 1, at_ends / (to_face + cheek));

@@ -12,18 +12,18 @@ namespace turnwright::thermal {
 struct heated_winding {
   metres inner, outer;  ///< from the tongue's face, with bulge
   metres height;        ///< along the limb
+  metres end_space;     ///< from its end to the yoke: cheek, or margin
   watts_per_metre_kelvin radial;  ///< conductivity across the layers
   watts_per_metre_kelvin axial;   ///< along the limb
 };
 
-/// Everything between heat and air.
+/// Everything between heat and air. The first winding begins at former_air + former_wall and what is wrapped over them.
 struct heated_coil {
   metres tongue, stack;
   metres window_width, window_length;
   metres former_air;   ///< slack between tongue and former
   metres former_wall;
   metres outer_wrap;
-  metres end_space;    ///< from a winding's end to the yoke: cheek, or margin and gap
   square_metres core_surface;
   metres core_height;
   std::vector<heated_winding> windings;  ///< from the core outwards
@@ -33,7 +33,6 @@ struct heated_coil {
 /// Rises over ambient.
 struct heat_state {
   kelvins core;
-  kelvins coil_surface;
   std::vector<kelvins> windings;  ///< average of each, as a rise by resistance would show it
   watts to_air;                   ///< heat that leaves; equals the losses where the balance closed
   int steps = 0;

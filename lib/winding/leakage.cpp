@@ -4,6 +4,8 @@
 #include <cmath>
 #include <numbers>
 
+#include <turnwright/measure/constants.hpp>
+
 namespace turnwright {
 namespace {
 
@@ -50,7 +52,6 @@ double energy_integral(const coil_si& a, const coil_si& b, const coil_si& first,
 }  // namespace
 
 std::vector<henries> leakage_against_first(const std::vector<stray_coil>& coils, const stray_space& space, turns n) {
-  constexpr double mu0 = 4e-7 * pi;
   std::vector<coil_si> si;
   std::vector<double> edges;
   for (const stray_coil& c : coils) {
@@ -71,7 +72,7 @@ std::vector<henries> leakage_against_first(const std::vector<stray_coil>& coils,
     factor.push_back(std::sqrt(rogowski(height, width) / height));
   }
   std::vector<henries> matrix(loops * loops);
-  const double scale = mu0 * n.count() * n.count();
+  const double scale = mu0_H_per_m * n.count() * n.count();
   for (std::size_t j = 0; j < loops; ++j) {
     for (std::size_t m = j; m < loops; ++m) {
       const double l = scale * factor[j] * factor[m] * energy_integral(si[j + 1], si[m + 1], first, edges, plain(space.around));

@@ -76,6 +76,10 @@ TEST_CASE("each wrong entry is named with its place and a code", "[refusal]") {
       {"/limits", "hot", "wrong-sort", "job.json /limits"},
       {"/format", "turnwright-job/2", "unknown-word", "job.json /format"},
       {"/valves", json::array(), "not-yet", "job.json /valves"},
+      {"/secondaries/1/floats_on", "heaters", "unknown-word", "job.json /secondaries/1/floats_on"},
+      {"/primary/tolerance", "1 %", "not-yet", "job.json /primary/tolerance"},
+      {"/screens", json::array({{{"after", "HT"}}, {{"after", "HT"}}}), "repeated-name", "job.json /screens/1/after"},
+      {"/title", "a\nb", "bad-name", "job.json /title"},
       {"/aim", "beauty", "unknown-word", "job.json /aim"},
   };
   for (const wrong& w : list) {
@@ -88,6 +92,22 @@ TEST_CASE("each wrong entry is named with its place and a code", "[refusal]") {
     CHECK(faults[0].where == w.where);
     CHECK_FALSE(faults[0].wanted.empty());
   }
+}
+
+TEST_CASE("a ring of windings that ride on each other is refused", "[refusal]") {
+  json job = json::parse(good);
+  job["secondaries"][0]["floats_on"] = "heaters";
+  job["secondaries"][1]["floats_on"] = "HT";
+  REQUIRE(faults_of(job.dump()).size() == 2);
+  CHECK(faults_of(job.dump())[0].code == "floats");
+}
+
+TEST_CASE("a centre tap wants an even number of turns", "[refusal]") {
+  json job = json::parse(good);
+  job["secondaries"][1]["centre_tap"] = true;
+  job["secondaries"][1]["turns"] = 17;
+  REQUIRE(faults_of(job.dump()).size() == 1);
+  CHECK(faults_of(job.dump())[0].code == "odd-turns");
 }
 
 TEST_CASE("what is missing is named", "[refusal]") {

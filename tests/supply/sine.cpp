@@ -123,8 +123,22 @@ TEST_CASE("a tap carries its own current and that of its half through the shared
   CHECK(plain(s.ports[0].current.plain()) == Approx(i).epsilon(1e-12));
   CHECK(plain(s.ports[1].current.plain()) == Approx(j).epsilon(1e-12));
   CHECK(plain(s.shared_current[1].plain()) == Approx(i + j).epsilon(1e-12));
-  CHECK(plain(s.copper[0]) == Approx(i * i * 5).epsilon(1e-12));
-  CHECK(plain(s.copper[1]) == Approx((i + j) * (i + j) * 5).epsilon(1e-12));
+  CHECK(plain(s.copper[0]) + plain(s.copper[1]) == Approx(i * i * 5 + (i + j) * (i + j) * 5).epsilon(1e-12));
+}
+
+TEST_CASE("two taps of one half share the shorter one's copper", "[property]") {
+  // The half has 10 ohm; the taps 5 and 2 ohm of it. Copper by its three stretches.
+  const supply::sine_network net{volts_rms{100_V}, 50_Hz, 0_ohm, turns{1000}, 0_ohm, std::nullopt, std::nullopt,
+                                 {{turns{1000}, 10_ohm, 900_ohm, std::nullopt}, {turns{500}, 5_ohm, 300_ohm, std::size_t{0}}, {turns{200}, 2_ohm, 100_ohm, std::size_t{0}}},
+                                 std::vector<henries>(9, 0_H)};
+  const supply::sine_state s = supply::solve(net);
+  const double i = plain(s.ports[0].current.plain()), j = plain(s.ports[1].current.plain()), k = plain(s.ports[2].current.plain());
+  CHECK(plain(s.ports[0].on_load.plain()) == Approx(100 - 5 * i - 3 * (i + j) - 2 * (i + j + k)).epsilon(1e-12));
+  CHECK(plain(s.ports[1].on_load.plain()) == Approx(50 - 3 * (i + j) - 2 * (i + j + k)).epsilon(1e-12));
+  CHECK(plain(s.ports[2].on_load.plain()) == Approx(20 - 2 * (i + j + k)).epsilon(1e-12));
+  const double lost = plain(s.copper[0]) + plain(s.copper[1]) + plain(s.copper[2]);
+  CHECK(lost == Approx(5 * i * i + 3 * (i + j) * (i + j) + 2 * (i + j + k) * (i + j + k)).epsilon(1e-12));
+  CHECK(plain(s.shared_current[2].plain()) == Approx(i + j + k).epsilon(1e-12));
 }
 
 TEST_CASE("the kernel in plain doubles and the door in quantities give the same", "[property]") {

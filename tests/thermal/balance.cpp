@@ -21,13 +21,12 @@ heated_coil small_coil() {
   c.former_air = 0.2_mm;
   c.former_wall = 1.2_mm;
   c.outer_wrap = 0.6_mm;
-  c.end_space = 1.1_mm;
   c.core_surface = 8220_mm2;
   c.core_height = 50_mm;
   c.ambient = 25_degC;
-  c.windings = {{1.4_mm, 4.2_mm, 27_mm, 0.16_W_per_mK, 0.20_W_per_mK},
-                {4.5_mm, 7.0_mm, 27_mm, 0.14_W_per_mK, 0.18_W_per_mK},
-                {7.3_mm, 8.4_mm, 27_mm, 0.22_W_per_mK, 0.30_W_per_mK}};
+  c.windings = {{1.4_mm, 4.2_mm, 27_mm, 1.1_mm, 0.16_W_per_mK, 0.20_W_per_mK},
+                {4.5_mm, 7.0_mm, 27_mm, 1.1_mm, 0.14_W_per_mK, 0.18_W_per_mK},
+                {7.3_mm, 8.4_mm, 27_mm, 1.1_mm, 0.22_W_per_mK, 0.30_W_per_mK}};
   return c;
 }
 
