@@ -21,15 +21,18 @@ void add_shared(CLI::App& command, shared_options& o) {
       ->multi_option_policy(CLI::MultiOptionPolicy::Throw);
   command.add_flag("--force", o.output.force, "overwrite files that are there already");
   command.add_option("--tables", o.folders, "folder with the shop's own table rows, put in front of the bundled ones")
-      ->take_all()->expected(1);
+      ->take_all()
+      ->expected(1);
 }
 
 void add_plan(CLI::App& app, shared_options& shared, plan_order& order, const CLI::App*& chosen) {
   CLI::App* c = app.add_subcommand("plan", "design one transformer that can be wound");
   c->add_option("JOB", order.job, "job file, or - for standard input");
   c->add_option("--mains", order.mains, "without a job file: the mains, such as \"230 V 50 Hz\"");
-  c->add_option("--winding", order.windings, "without a job file: a winding, such as \"heaters: 6.3 V 4 A ct\"; once for each")
-      ->take_all()->expected(1);
+  c->add_option("--winding", order.windings,
+                "without a job file: a winding, such as \"heaters: 6.3 V 4 A ct\"; once for each")
+      ->take_all()
+      ->expected(1);
   c->add_option("--write-job", order.write_job, "keep the job as a file");
   c->add_option("--sheet", order.sheet, "the winding sheet as a page (not yet)");
   c->add_option("--tests", order.tests, "a blank test card (not yet)");
@@ -39,11 +42,12 @@ void add_plan(CLI::App& app, shared_options& shared, plan_order& order, const CL
   c->callback([c, &chosen] { chosen = c; });
 }
 
-CLI::App* add_table(CLI::App& app, shared_options& shared, table_order& order, const std::string& name, const std::string& about,
-                    const CLI::App*& chosen) {
+CLI::App* add_table(CLI::App& app, shared_options& shared, table_order& order, const std::string& name,
+                    const std::string& about, const CLI::App*& chosen) {
   CLI::App* c = app.add_subcommand(name, about);
   c->add_option("NAME", order.name, "one row; without it the whole table");
-  c->add_flag("--csv{.}", order.csv, "the table as the file it came from, to copy, edit and lay over; --csv=TABLE another one");
+  c->add_flag("--csv{.}", order.csv,
+              "the table as the file it came from, to copy, edit and lay over; --csv=TABLE another one");
   add_shared(*c, shared);
   c->callback([c, &chosen] { chosen = c; });
   return c;
@@ -66,7 +70,8 @@ void show(const refused& why, std::ostream& aside) {
 status refuse_line(const CLI::ParseError& e, std::ostream& aside) {
   std::string words = e.what();
   for (char& c : words) c = c == '\n' ? ' ' : c;
-  aside << "command line: " << words << " [usage]\n  hint: turnwright --help lists the commands, turnwright COMMAND --help its options\n";
+  aside << "command line: " << words
+        << " [usage]\n  hint: turnwright --help lists the commands, turnwright COMMAND --help its options\n";
   return input_wrong;
 }
 
@@ -85,7 +90,8 @@ void declare(everything& e) {
   e.app.name("turnwright");
   e.app.footer("Mains and HT kill: winding, wiring and testing are for trained people, under the local code.");
   add_plan(e.app, e.shared, e.plan, e.chosen);
-  add_table(e.app, e.shared, e.table, "wire", "the wire tables: a size, its figures and its neighbours in other systems", e.chosen);
+  add_table(e.app, e.shared, e.table, "wire",
+            "the wire tables: a size, its figures and its neighbours in other systems", e.chosen);
   add_table(e.app, e.shared, e.table, "core", "the laminations", e.chosen);
   CLI::App* steel = add_table(e.app, e.shared, e.table, "steel", "the steels", e.chosen);
   steel->add_option("--at", e.table.at, "flux density to give field and loss at, such as \"1.37 T\"");

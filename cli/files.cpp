@@ -26,7 +26,9 @@ std::string read_whole(const std::string& path) {
       throw refused(wording::other("unreadable", path, "a folder", "a job file"));
     }
     file.open(path, std::ios::binary);
-    if (!file) throw refused(wording::other("unreadable", path, "no file that can be read", "a job file, or - for standard input"));
+    if (!file)
+      throw refused(
+          wording::other("unreadable", path, "no file that can be read", "a job file, or - for standard input"));
   }
   std::istream& in = path == "-" ? std::cin : file;
   std::string text;
@@ -43,9 +45,12 @@ void check_target(const std::string& path, bool force) {
   const auto there = std::filesystem::symlink_status(path);
   if (!std::filesystem::exists(there)) return;
   if (!std::filesystem::is_regular_file(there)) {
-    throw refused(wording::other("unwritable", path, "something that is no ordinary file", "the name of an ordinary file"));
+    throw refused(
+        wording::other("unwritable", path, "something that is no ordinary file", "the name of an ordinary file"));
   }
-  if (!force) throw refused(wording::other("exists", path, "a file that is there already", "a new name", "--force overwrites it"));
+  if (!force)
+    throw refused(
+        wording::other("exists", path, "a file that is there already", "a new name", "--force overwrites it"));
 }
 
 void write_whole(const std::string& path, const std::string& text, bool force) {
@@ -57,7 +62,8 @@ void write_whole(const std::string& path, const std::string& text, bool force) {
     out.flush();
     if (!out) {
       std::remove(beside.c_str());
-      throw refused(wording::other("unwritable", path, "a place that cannot be written", "a folder with room that may be written to"));
+      throw refused(wording::other("unwritable", path, "a place that cannot be written",
+                                   "a folder with room that may be written to"));
     }
   }
   std::error_code trouble;

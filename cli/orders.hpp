@@ -34,12 +34,13 @@ struct plan_order {
 struct table_order {
   std::optional<std::string> name;
   std::optional<std::string> at, frequency;  ///< of a steel
-  std::string csv;  ///< name of a table, "." for the command's own; empty: not asked for
+  std::string csv;                           ///< name of a table, "." for the command's own; empty: not asked for
   output_wish output;
 };
 
 /// Each returns the exit status; results go to `out`, everything else to `aside`. They throw `refused` for wrong input.
-status run_plan(const plan_order& order, const catalogue& tables, const shop& s, std::ostream& out, std::ostream& aside);
+status run_plan(const plan_order& order, const catalogue& tables, const shop& s, std::ostream& out,
+                std::ostream& aside);
 status run_wire(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out);
 status run_core(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out);
 status run_steel(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out);

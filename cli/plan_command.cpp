@@ -23,7 +23,8 @@ job_text text_of(const plan_order& order) {
     throw refused(wording::other("either-or", "plan", "both a job file and --mains or --winding", "one of them"));
   }
   if (!order.job && !on_line) {
-    throw refused(wording::missing("plan", "a job file, - for standard input, or --mains and --winding", "turnwright plan --help shows both"));
+    throw refused(wording::missing("plan", "a job file, - for standard input, or --mains and --winding",
+                                   "turnwright plan --help shows both"));
   }
   if (order.job) return {read_whole(*order.job), spoken(*order.job)};
   return {job_of({order.mains, order.windings}), "command line"};
@@ -32,18 +33,21 @@ job_text text_of(const plan_order& order) {
 void check_codes_of(const plan_order& order) {
   std::vector<std::string> known(check_codes().begin(), check_codes().end());
   for (const std::string& code : order.accept) {
-    if (std::find(known.begin(), known.end(), code) == known.end()) throw refused(wording::unknown_word("--accept", code, known));
+    if (std::find(known.begin(), known.end(), code) == known.end())
+      throw refused(wording::unknown_word("--accept", code, known));
   }
 }
 
 void refuse_later_parts(const plan_order& order) {
   if (order.sheet) throw refused(wording::not_yet("--sheet", "the winding sheet as a page"));
-  if (order.tests) throw refused(wording::not_yet("--tests", "a blank test card", "the tests stand in the report and in the JSON"));
+  if (order.tests)
+    throw refused(wording::not_yet("--tests", "a blank test card", "the tests stand in the report and in the JSON"));
 }
 
 }  // namespace
 
-status run_plan(const plan_order& order, const catalogue& tables, const shop& s, std::ostream& out, std::ostream& aside) {
+status run_plan(const plan_order& order, const catalogue& tables, const shop& s, std::ostream& out,
+                std::ostream& aside) {
   refuse_later_parts(order);
   check_codes_of(order);
   const bool json_file = order.output.json && *order.output.json != "-";
@@ -60,7 +64,8 @@ status run_plan(const plan_order& order, const catalogue& tables, const shop& s,
   if (!p.windable) {
     for (const check& c : p.checks) {
       if (c.weight != level::stop) continue;
-      aside << "cannot be wound: " << c.code << ": " << c.text << "; found " << c.found << ", bound " << c.bound << '\n';
+      aside << "cannot be wound: " << c.code << ": " << c.text << "; found " << c.found << ", bound " << c.bound
+            << '\n';
       if (!c.cure.empty()) aside << "  cure: " << c.cure << '\n';
     }
   }

@@ -2,8 +2,8 @@
 #include <ostream>
 
 #include <turnwright/job/result.hpp>
-#include <turnwright/measure/read.hpp>
 #include <turnwright/measure/literals.hpp>
+#include <turnwright/measure/read.hpp>
 #include <turnwright/remark/wording.hpp>
 #include <turnwright/sheet/report.hpp>
 
@@ -26,13 +26,15 @@ bool gave_csv(const table_order& order, const catalogue& tables, const std::stri
   if (order.csv.empty()) return false;
   const std::string name = order.csv == "." ? own : order.csv;
   const std::vector<std::string> known = tables.names();
-  if (std::find(known.begin(), known.end(), name) == known.end()) throw refused(wording::unknown_word("--csv", name, known));
+  if (std::find(known.begin(), known.end(), name) == known.end())
+    throw refused(wording::unknown_word("--csv", name, known));
   out << tables.named(name).text;
   return true;
 }
 
 template <class Q>
-std::optional<Q> asked(const std::optional<std::string>& text, const char* option, const char* least, const char* most) {
+std::optional<Q> asked(const std::optional<std::string>& text, const char* option, const char* least,
+                       const char* most) {
   if (!text) return std::nullopt;
   const reading<Q> r = read<Q>(*text);
   if (!r.value) throw refused(wording::quantity(option, *text, r.fault));

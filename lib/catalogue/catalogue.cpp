@@ -53,12 +53,14 @@ void lay_over(table& under, std::vector<row> shop_rows, const std::string& key_c
 }
 
 // A shop's table may leave columns out, but not the key, and may have none that nobody reads.
-void check_columns(const table& bundled, const std::vector<row>& shop_rows, const std::string& key_column, const std::string& file) {
+void check_columns(const table& bundled, const std::vector<row>& shop_rows, const std::string& key_column,
+                   const std::string& file) {
   if (shop_rows.empty()) return;
   const std::vector<std::string>& known = bundled.rows.front().columns();
   std::vector<remark> faults;
   for (const std::string& column : shop_rows.front().columns()) {
-    if (std::find(known.begin(), known.end(), column) == known.end()) faults.push_back(wording::unknown_word(file + ":1", column, known));
+    if (std::find(known.begin(), known.end(), column) == known.end())
+      faults.push_back(wording::unknown_word(file + ":1", column, known));
   }
   const auto& given = shop_rows.front().columns();
   if (std::find(given.begin(), given.end(), key_column) == given.end()) {
@@ -103,7 +105,8 @@ catalogue catalogue::with_shop_rows(const std::vector<std::filesystem::path>& fo
   for (const auto& folder : folders) {
     std::error_code trouble;
     if (!std::filesystem::is_directory(folder, trouble)) {
-      throw refused(wording::other("no-folder", folder.string(), "no such folder", "a folder that holds tables in CSV"));
+      throw refused(
+          wording::other("no-folder", folder.string(), "no such folder", "a folder that holds tables in CSV"));
     }
     std::vector<std::filesystem::path> files;
     for (const auto& entry : std::filesystem::directory_iterator(folder)) {

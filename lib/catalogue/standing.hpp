@@ -12,10 +12,14 @@ enum class standing { estimate, memory, derived, read };
 /// The word for a standing.
 constexpr std::string_view word_of(standing s) {
   switch (s) {
-    case standing::estimate: return "estimate";
-    case standing::memory: return "memory";
-    case standing::derived: return "derived";
-    case standing::read: return "read";
+    case standing::estimate:
+      return "estimate";
+    case standing::memory:
+      return "memory";
+    case standing::derived:
+      return "derived";
+    case standing::read:
+      return "read";
   }
   return "";
 }

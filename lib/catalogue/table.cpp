@@ -39,7 +39,11 @@ split_line split(std::string_view line) {
 bool is_utf8(std::string_view s) {
   for (std::size_t i = 0; i < s.size();) {
     const auto lead = static_cast<unsigned char>(s[i]);
-    const std::size_t length = lead < 0x80 ? 1 : lead >= 0xC2 && lead < 0xE0 ? 2 : lead >= 0xE0 && lead < 0xF0 ? 3 : lead >= 0xF0 && lead < 0xF5 ? 4 : 0;
+    const std::size_t length = lead < 0x80                   ? 1
+                               : lead >= 0xC2 && lead < 0xE0 ? 2
+                               : lead >= 0xE0 && lead < 0xF0 ? 3
+                               : lead >= 0xF0 && lead < 0xF5 ? 4
+                                                             : 0;
     if (length == 0 || i + length > s.size()) return false;
     for (std::size_t k = 1; k < length; ++k) {
       if ((static_cast<unsigned char>(s[i + k]) & 0xC0u) != 0x80u) return false;
@@ -107,7 +111,9 @@ std::string row::place(std::string_view column) const {
   return where;
 }
 
-std::string row::source() const { return the_shops_ ? text("source") + " (the shop's " + origin_ + ")" : text("source"); }
+std::string row::source() const {
+  return the_shops_ ? text("source") + " (the shop's " + origin_ + ")" : text("source");
+}
 
 std::vector<row> read_csv(std::string_view text, const std::string& origin) {
   std::vector<row> rows;
@@ -123,7 +129,8 @@ std::vector<row> read_csv(std::string_view text, const std::string& origin) {
     if (line.ends_with('\r')) line.remove_suffix(1);
     if (trimmed(line).empty() || line.starts_with('#')) continue;
     if (!is_utf8(line)) {
-      faults.push_back(wording::other("bad-row", origin + ":" + std::to_string(line_number), "bytes that are no UTF-8", "a text in UTF-8"));
+      faults.push_back(wording::other("bad-row", origin + ":" + std::to_string(line_number), "bytes that are no UTF-8",
+                                      "a text in UTF-8"));
       continue;
     }
     split_line parts = split(line);
@@ -131,7 +138,8 @@ std::vector<row> read_csv(std::string_view text, const std::string& origin) {
     if (!columns) {
       columns = std::make_shared<const std::vector<std::string>>(std::move(parts.cells));
     } else if (!parts.closed) {
-      faults.push_back(wording::other("bad-row", origin + ":" + std::to_string(line_number), "a quotation mark left open", "a row on one line"));
+      faults.push_back(wording::other("bad-row", origin + ":" + std::to_string(line_number),
+                                      "a quotation mark left open", "a row on one line"));
     } else if (parts.cells.size() != columns->size()) {
       faults.push_back(wording::other("bad-row", origin + ":" + std::to_string(line_number),
                                       std::to_string(parts.cells.size()) + " cells",

@@ -15,7 +15,8 @@ namespace turnwright {
 /// One row. Cells are asked for by column name; every fault found so is noted with its place.
 class row {
  public:
-  row(std::shared_ptr<const std::vector<std::string>> columns, std::vector<std::string> cells, std::string origin, int line)
+  row(std::shared_ptr<const std::vector<std::string>> columns, std::vector<std::string> cells, std::string origin,
+      int line)
       : columns_(std::move(columns)), cells_(std::move(cells)), origin_(std::move(origin)), line_(line) {}
 
   /// Names of the columns.
@@ -55,8 +56,8 @@ struct table {
 /// Rows of a CSV text. Throws `refused` with every malformed line.
 std::vector<row> read_csv(std::string_view text, const std::string& origin);
 
-/// A name as it is compared: case, blanks and hyphens dropped, but for the mark between a whole number and its fraction,
-/// so that 1-1/16 is not 11/16.
+/// A name as it is compared: case, blanks and hyphens dropped, but for the mark between a whole number and its
+/// fraction, so that 1-1/16 is not 11/16.
 std::string name_key(std::string_view name);
 
 }  // namespace turnwright

@@ -28,7 +28,8 @@ class insulation_book {
   /// Test volts, one minute, by working volts [V r.m.s.]: guidance, recalled. Beyond the table in proportion.
   volts_rms test_basic(volts_rms working) const;
   volts_rms test_reinforced(volts_rms working) const;
-  /// Breakdown volts of a twisted pair of enamelled wire [V r.m.s.] of grade 1, 2 or 3: the acceptance figure of new wire.
+  /// Breakdown volts of a twisted pair of enamelled wire [V r.m.s.] of grade 1, 2 or 3: the acceptance figure of new
+  /// wire.
   std::optional<volts_rms> enamel_breakdown(metres bare, int grade) const;
 
  private:
@@ -54,7 +55,7 @@ class insulation_book {
 /// Thickness of wraps, from practice (memory).
 namespace wraps {
 inline constexpr metres over_former = as<metres>(0.15e-3);
-inline constexpr metres ordinary = as<metres>(0.3e-3);       ///< three layers of paper
+inline constexpr metres ordinary = as<metres>(0.3e-3);         ///< three layers of paper
 inline constexpr metres floating_heater = as<metres>(0.4e-3);  ///< either side of a heater that rides on the HT
 inline constexpr metres outer = as<metres>(0.25e-3);
 inline constexpr metres screen_foil = as<metres>(0.05e-3);

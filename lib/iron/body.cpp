@@ -10,9 +10,12 @@ namespace turnwright {
 
 std::string_view word_of(stacking s) {
   switch (s) {
-    case stacking::interleaved: return "interleaved";
-    case stacking::in_pairs: return "in pairs";
-    case stacking::butt: return "butt";
+    case stacking::interleaved:
+      return "interleaved";
+    case stacking::in_pairs:
+      return "in pairs";
+    case stacking::butt:
+      return "butt";
   }
   return "";
 }
@@ -53,9 +56,12 @@ double core_body::building_factor() const {
 metres core_body::joint_gap() const {
   if (choice_.pattern.family == pattern_family::m) return as<metres>(0.01e-3);
   switch (choice_.style) {
-    case stacking::interleaved: return as<metres>(0.02e-3);
-    case stacking::in_pairs: return as<metres>(0.03e-3);
-    case stacking::butt: return as<metres>(0.20e-3);  // two joints in the loop
+    case stacking::interleaved:
+      return as<metres>(0.02e-3);
+    case stacking::in_pairs:
+      return as<metres>(0.03e-3);
+    case stacking::butt:
+      return as<metres>(0.20e-3);  // two joints in the loop
   }
   return as<metres>(0.0);
 }
@@ -64,7 +70,8 @@ amperes_rms core_body::magnetising_current(teslas b, turns n) const {
   constexpr int samples = 48;  // midpoints of a quarter cycle
   static const auto sines = [] {
     std::array<double, samples> s{};
-    for (int i = 0; i < samples; ++i) s[static_cast<std::size_t>(i)] = std::sin((i + 0.5) * std::numbers::pi / (2 * samples));
+    for (int i = 0; i < samples; ++i)
+      s[static_cast<std::size_t>(i)] = std::sin((i + 0.5) * std::numbers::pi / (2 * samples));
     return s;
   }();
   const double l_m = plain(path_), gap_m = plain(joint_gap());

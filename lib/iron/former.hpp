@@ -16,10 +16,10 @@ std::string_view word_of(former_kind k);
 struct former {
   former_kind kind = former_kind::layers;
   metres wall;
-  metres cheek;           ///< thickness of each cheek; zero for a tube
-  metres winding_width;   ///< along the limb
-  metres winding_height;  ///< across the window, wall and clearance taken off
-  metres clearance;       ///< left free between coil and outer limb
+  metres cheek;                           ///< thickness of each cheek; zero for a tube
+  metres winding_width;                   ///< along the limb
+  metres winding_height;                  ///< across the window, wall and clearance taken off
+  metres clearance;                       ///< left free between coil and outer limb
   standing known_how = standing::memory;  ///< of the room for winding
 };
 

@@ -21,15 +21,18 @@ pattern_family family_of(const row& r) {
   for (const pattern_family f : families) {
     if (word_of(f) == r.text("family")) return f;
   }
-  throw refused(wording::other("bad-row", r.place("family"), wording::quoted(r.text("family")), "ei, ei-wide, ei-inch, m or ui"));
+  throw refused(
+      wording::other("bad-row", r.place("family"), wording::quoted(r.text("family")), "ei, ei-wide, ei-inch, m or ui"));
 }
 
 void check_geometry(const lamination& l, const row& r) {
   for (const metres& part : {l.tongue, l.outer_limb, l.window_width, l.window_length, l.yoke}) {
-    if (!(plain(part) > 0)) throw refused(wording::other("bad-row", r.place(), "a dimension of zero or less", "lengths over zero"));
+    if (!(plain(part) > 0))
+      throw refused(wording::other("bad-row", r.place(), "a dimension of zero or less", "lengths over zero"));
   }
   const int windows = l.family == pattern_family::ui ? 1 : 2;
-  const metres across = (windows == 2 ? l.tongue : mm(0)) + 2.0 * l.outer_limb + static_cast<double>(windows) * l.window_width;
+  const metres across =
+      (windows == 2 ? l.tongue : mm(0)) + 2.0 * l.outer_limb + static_cast<double>(windows) * l.window_width;
   const metres along = l.window_length + 2.0 * l.yoke;
   if (std::abs(plain(across - l.width)) > 0.06e-3 || std::abs(plain(along - l.height)) > 0.06e-3) {
     throw refused(wording::other("geometry", r.place(), "limbs and windows that do not add up to width and height",
@@ -38,11 +41,19 @@ void check_geometry(const lamination& l, const row& r) {
 }
 
 lamination read_row(const row& r) {
-  lamination l{.name = r.text("name"), .also = r.list("aliases"), .family = family_of(r),
-               .tongue = mm(r.needed("tongue_mm")), .outer_limb = mm(r.needed("outer_limb_mm")),
-               .window_width = mm(r.needed("window_width_mm")), .window_length = mm(r.needed("window_length_mm")),
-               .yoke = mm(r.needed("yoke_mm")), .width = mm(r.needed("width_mm")), .height = mm(r.needed("height_mm")),
-               .stacks = {}, .known_how = r.known_how(), .source = r.source()};
+  lamination l{.name = r.text("name"),
+               .also = r.list("aliases"),
+               .family = family_of(r),
+               .tongue = mm(r.needed("tongue_mm")),
+               .outer_limb = mm(r.needed("outer_limb_mm")),
+               .window_width = mm(r.needed("window_width_mm")),
+               .window_length = mm(r.needed("window_length_mm")),
+               .yoke = mm(r.needed("yoke_mm")),
+               .width = mm(r.needed("width_mm")),
+               .height = mm(r.needed("height_mm")),
+               .stacks = {},
+               .known_how = r.known_how(),
+               .source = r.source()};
   check_geometry(l, r);
   return l;
 }
@@ -56,11 +67,16 @@ bool fits(const lamination& l, const std::string& key) {
 
 std::string_view word_of(pattern_family f) {
   switch (f) {
-    case pattern_family::ei: return "ei";
-    case pattern_family::ei_wide: return "ei-wide";
-    case pattern_family::ei_inch: return "ei-inch";
-    case pattern_family::m: return "m";
-    case pattern_family::ui: return "ui";
+    case pattern_family::ei:
+      return "ei";
+    case pattern_family::ei_wide:
+      return "ei-wide";
+    case pattern_family::ei_inch:
+      return "ei-inch";
+    case pattern_family::m:
+      return "m";
+    case pattern_family::ui:
+      return "ui";
   }
   return "";
 }
@@ -82,7 +98,9 @@ square_metres face_area(const lamination& l) {
 
 pattern_book::pattern_book(const catalogue& tables) {
   std::vector<remark> faults;
-  const auto note = [&](const refused& why) { faults.insert(faults.end(), why.remarks().begin(), why.remarks().end()); };
+  const auto note = [&](const refused& why) {
+    faults.insert(faults.end(), why.remarks().begin(), why.remarks().end());
+  };
   for (const row& r : tables.named("laminations").rows) {
     try {
       patterns_.push_back(read_row(r));
@@ -93,9 +111,13 @@ pattern_book::pattern_book(const catalogue& tables) {
   for (const row& r : tables.named("stacks").rows) {
     try {
       const std::string key = name_key(r.text("lamination"));
-      const auto at = std::find_if(patterns_.begin(), patterns_.end(), [&](const lamination& l) { return name_key(l.name) == key; });
-      if (at == patterns_.end()) throw refused(wording::other("unknown-name", r.place("lamination"), wording::quoted(r.text("lamination")), "a lamination of the table"));
-      if (!(r.needed("stack_mm") > 0)) throw refused(wording::other("bad-row", r.place("stack_mm"), r.text("stack_mm"), "a stack over zero"));
+      const auto at = std::find_if(patterns_.begin(), patterns_.end(),
+                                   [&](const lamination& l) { return name_key(l.name) == key; });
+      if (at == patterns_.end())
+        throw refused(wording::other("unknown-name", r.place("lamination"), wording::quoted(r.text("lamination")),
+                                     "a lamination of the table"));
+      if (!(r.needed("stack_mm") > 0))
+        throw refused(wording::other("bad-row", r.place("stack_mm"), r.text("stack_mm"), "a stack over zero"));
       at->stacks.push_back(mm(r.needed("stack_mm")));
     } catch (const refused& why) {
       note(why);
@@ -122,14 +144,16 @@ const lamination& pattern_book::named(std::string_view name, const std::string& 
     known.push_back(l.name);
   }
   if (found.size() == 1) return *found.front();
-  if (found.empty()) throw refused(wording::unknown_name(where, name, "a lamination of the table, such as \"EI 96\"", known));
+  if (found.empty())
+    throw refused(wording::unknown_name(where, name, "a lamination of the table, such as \"EI 96\"", known));
   std::vector<std::string> names;
   for (const lamination* l : found) {
     // The first of its names that fits no other pattern.
     std::vector<std::string> own{l->name};
     own.insert(own.end(), l->also.begin(), l->also.end());
     const auto only = std::find_if(own.begin(), own.end(), [&](const std::string& n) {
-      return std::count_if(patterns_.begin(), patterns_.end(), [&](const lamination& p) { return fits(p, name_key(n)); }) == 1;
+      return std::count_if(patterns_.begin(), patterns_.end(),
+                           [&](const lamination& p) { return fits(p, name_key(n)); }) == 1;
     });
     names.push_back(only == own.end() ? l->name : *only);
   }

@@ -21,13 +21,13 @@ struct lamination {
   std::string name;
   std::vector<std::string> also;
   pattern_family family = pattern_family::ei;
-  metres tongue;         ///< centre limb; of a UI pattern the limb that is wound
+  metres tongue;  ///< centre limb; of a UI pattern the limb that is wound
   metres outer_limb;
   metres window_width;   ///< across, from tongue to outer limb
   metres window_length;  ///< along the limb
   metres yoke;
-  metres width;          ///< over all, across the limbs
-  metres height;         ///< over all, along the limbs
+  metres width;                ///< over all, across the limbs
+  metres height;               ///< over all, along the limbs
   std::vector<metres> stacks;  ///< usual ones, least first
   standing known_how = standing::estimate;
   std::string source;
@@ -36,9 +36,11 @@ struct lamination {
 /// A shell pattern has its winding on a centre limb between two windows.
 bool is_shell(const lamination& l);
 
-/// Mean length of the flux path [m], with quarter-circle corners: straight along window, quarter circles in the corners.
+/// Mean length of the flux path [m], with quarter-circle corners: straight along window, quarter circles in the
+/// corners.
 ///
-///   l = 2 (c + e) + pi (r1 + r2),  r1 = (t/4 + y/2) / 2 at the tongue (t/2 in place of t/4 for UI),  r2 = (o/2 + y/2) / 2
+///   l = 2 (c + e) + pi (r1 + r2),  r1 = (t/4 + y/2) / 2 at the tongue (t/2 in place of t/4 for UI),  r2 = (o/2 + y/2)
+///   / 2
 ///
 /// c and e the window across and along, t tongue, o outer limb, y yoke.
 ///

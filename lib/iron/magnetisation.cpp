@@ -30,7 +30,8 @@ magnetisation_curve::magnetisation_curve(const std::vector<magnetisation_point>&
   if (b.size() < 4) throw std::logic_error("a magnetisation curve of four points or more");
   const double first_h = std::exp(ln_h.front()), last_h = std::exp(ln_h.back()), first_b = b.front(), last_b = b.back();
   inside_ = std::make_shared<const inside>(
-      inside{first_b, first_h, last_b, last_h, boost::math::interpolators::pchip<std::vector<double>>(std::move(b), std::move(ln_h))});
+      inside{first_b, first_h, last_b, last_h,
+             boost::math::interpolators::pchip<std::vector<double>>(std::move(b), std::move(ln_h))});
 }
 
 amperes_per_metre magnetisation_curve::field(teslas flux_density) const {

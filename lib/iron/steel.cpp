@@ -17,16 +17,26 @@ steel_kind kind_of_row(const row& r) {
 }
 
 steel read_row(const row& r) {
-  return {.name = r.text("name"), .also = r.list("aliases"), .kind = kind_of_row(r),
+  return {.name = r.text("name"),
+          .also = r.list("aliases"),
+          .kind = kind_of_row(r),
           .sheet = as<metres>(r.needed("sheet_mm") * 1e-3),
           .density = as<kilograms_per_cubic_metre>(r.needed("density_kg_per_m3")),
           .stacking_factor = r.needed("stacking_factor_ratio"),
           .rated_loss = as<watts_per_kilogram>(r.needed("loss_w_per_kg")),
-          .rated_flux_density = as<teslas>(r.needed("loss_at_t")), .rated_frequency = as<hertz>(r.needed("loss_at_hz")),
-          .hysteresis_ratio = r.needed("hysteresis_ratio"), .flux_nominal = as<teslas>(r.needed("flux_nominal_t")),
-          .flux_high = as<teslas>(r.needed("flux_high_t")), .magnetisation_from = r.text("magnetisation_curve"),
-          .loss_from = r.text("loss_curve"), .loss_scale = 1.0, .magnetisation = {}, .polarisation = true,
-          .loss_curve = {}, .known_how = r.known_how(), .source = r.source()};
+          .rated_flux_density = as<teslas>(r.needed("loss_at_t")),
+          .rated_frequency = as<hertz>(r.needed("loss_at_hz")),
+          .hysteresis_ratio = r.needed("hysteresis_ratio"),
+          .flux_nominal = as<teslas>(r.needed("flux_nominal_t")),
+          .flux_high = as<teslas>(r.needed("flux_high_t")),
+          .magnetisation_from = r.text("magnetisation_curve"),
+          .loss_from = r.text("loss_curve"),
+          .loss_scale = 1.0,
+          .magnetisation = {},
+          .polarisation = true,
+          .loss_curve = {},
+          .known_how = r.known_how(),
+          .source = r.source()};
 }
 
 struct placed_loss {
@@ -37,7 +47,8 @@ struct placed_loss {
 // The points sorted by frequency and flux density; each frequency needs two or more that rise.
 std::vector<loss_point> checked_loss_curve(std::vector<placed_loss> points, const std::string& name) {
   std::stable_sort(points.begin(), points.end(), [](const placed_loss& a, const placed_loss& b) {
-    return a.point.frequency != b.point.frequency ? a.point.frequency < b.point.frequency : a.point.flux_density < b.point.flux_density;
+    return a.point.frequency != b.point.frequency ? a.point.frequency < b.point.frequency
+                                                  : a.point.flux_density < b.point.flux_density;
   });
   std::vector<loss_point> curve;
   for (std::size_t i = 0; i < points.size(); ++i) {
@@ -46,10 +57,13 @@ std::vector<loss_point> checked_loss_curve(std::vector<placed_loss> points, cons
     const bool last = i + 1 == points.size() || points[i + 1].point.frequency != p.frequency;
     const bool rises = first || (curve.back().flux_density < p.flux_density && curve.back().loss < p.loss);
     if (!rises || !(plain(p.loss) > 0) || !(plain(p.flux_density) > 0)) {
-      throw refused(wording::other("curve", points[i].place, wording::quoted(name) + ", a loss that does not rise", "points that rise in flux density and loss"));
+      throw refused(wording::other("curve", points[i].place, wording::quoted(name) + ", a loss that does not rise",
+                                   "points that rise in flux density and loss"));
     }
     if (first && last) {
-      throw refused(wording::other("curve", points[i].place, wording::quoted(name) + ", one point alone at its frequency", "two points or more at each frequency"));
+      throw refused(wording::other("curve", points[i].place,
+                                   wording::quoted(name) + ", one point alone at its frequency",
+                                   "two points or more at each frequency"));
     }
     curve.push_back(p);
   }
@@ -57,15 +71,22 @@ std::vector<loss_point> checked_loss_curve(std::vector<placed_loss> points, cons
 }
 
 void check_figures(const steel& s, const row& r) {
-  const std::pair<const char*, double> over_zero[]{{"sheet_mm", plain(s.sheet)}, {"density_kg_per_m3", plain(s.density)},
-                                                   {"loss_w_per_kg", plain(s.rated_loss)}, {"loss_at_t", plain(s.rated_flux_density)},
-                                                   {"loss_at_hz", plain(s.rated_frequency)}, {"flux_nominal_t", plain(s.flux_nominal)},
+  const std::pair<const char*, double> over_zero[]{{"sheet_mm", plain(s.sheet)},
+                                                   {"density_kg_per_m3", plain(s.density)},
+                                                   {"loss_w_per_kg", plain(s.rated_loss)},
+                                                   {"loss_at_t", plain(s.rated_flux_density)},
+                                                   {"loss_at_hz", plain(s.rated_frequency)},
+                                                   {"flux_nominal_t", plain(s.flux_nominal)},
                                                    {"flux_high_t", plain(s.flux_high)}};
   for (const auto& [column, value] : over_zero) {
-    if (!(value > 0)) throw refused(wording::other("bad-row", r.place(column), wording::quoted(r.text(column)), "a figure over zero"));
+    if (!(value > 0))
+      throw refused(wording::other("bad-row", r.place(column), wording::quoted(r.text(column)), "a figure over zero"));
   }
-  for (const auto& [column, value] : {std::pair{"stacking_factor_ratio", s.stacking_factor}, std::pair{"hysteresis_ratio", s.hysteresis_ratio}}) {
-    if (!(value > 0 && value <= 1)) throw refused(wording::other("bad-row", r.place(column), wording::quoted(r.text(column)), "a ratio over 0, 1 at most"));
+  for (const auto& [column, value] :
+       {std::pair{"stacking_factor_ratio", s.stacking_factor}, std::pair{"hysteresis_ratio", s.hysteresis_ratio}}) {
+    if (!(value > 0 && value <= 1))
+      throw refused(
+          wording::other("bad-row", r.place(column), wording::quoted(r.text(column)), "a ratio over 0, 1 at most"));
   }
 }
 
@@ -82,12 +103,14 @@ void read_curves(steel& s, const catalogue& tables, const std::string& place) {
                        as<watts_per_kilogram>(r.needed("loss_w_per_kg"))};
     points.push_back({p, r.place()});
   }
-  if (points.empty()) throw refused(wording::missing(place + ":loss_curve", "a loss curve named " + wording::quoted(s.loss_from)));
+  if (points.empty())
+    throw refused(wording::missing(place + ":loss_curve", "a loss curve named " + wording::quoted(s.loss_from)));
   s.loss_curve = checked_loss_curve(std::move(points), s.loss_from);
   try {
     const magnetisation_curve closes(s.magnetisation, s.polarisation);
   } catch (const std::logic_error& why) {
-    throw refused(wording::other("curve", place + ":magnetisation_curve", wording::quoted(s.magnetisation_from), why.what()));
+    throw refused(
+        wording::other("curve", place + ":magnetisation_curve", wording::quoted(s.magnetisation_from), why.what()));
   }
 }
 
@@ -137,7 +160,9 @@ steel_loss loss_law::at(teslas flux_density, hertz frequency) const {
   }
   if (curves_.size() == 1) {
     const found p = on(curves_.front(), b);
-    const auto split = [&](double x) { return hysteresis_ratio_ * x / 50 + (1 - hysteresis_ratio_) * (x / 50) * (x / 50); };
+    const auto split = [&](double x) {
+      return hysteresis_ratio_ * x / 50 + (1 - hysteresis_ratio_) * (x / 50) * (x / 50);
+    };
     return {as<watts_per_kilogram>(p.w_per_kg * scale_ * split(f) / split(curves_.front().frequency_hz)), p.beyond};
   }
   // p_h f + p_e f^2 through the two curves that lie about f, or nearest to it
@@ -180,7 +205,8 @@ const steel& steel_book::named(std::string_view name, const std::string& where) 
     if (!found || same(s.name)) found = &s;
     fitting.push_back(s.name);
   }
-  if (!found) throw refused(wording::unknown_name(where, name, "a steel grade of the table, such as \"M400-50A\"", known));
+  if (!found)
+    throw refused(wording::unknown_name(where, name, "a steel grade of the table, such as \"M400-50A\"", known));
   if (fitting.size() > 1 && name_key(found->name) != key) throw refused(wording::ambiguous_name(where, name, fitting));
   return *found;
 }

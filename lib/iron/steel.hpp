@@ -21,11 +21,12 @@ struct magnetisation_point {
 /// Field against flux density: monotone, through the origin, with slope mu0 beyond the last point.
 class magnetisation_curve {
  public:
-  /// `polarisation`: the points give J = B - mu0 H. Four points or more, rising in both; throws std::logic_error otherwise.
+  /// `polarisation`: the points give J = B - mu0 H. Four points or more, rising in both; throws std::logic_error
+  /// otherwise.
   magnetisation_curve(const std::vector<magnetisation_point>& points, bool polarisation);
 
-  /// Field at a flux density [A/m]: monotone cubic in ln H over B between the points (Fritsch and Butland 1984), straight
-  /// to the origin below the first, slope mu0 beyond the last.
+  /// Field at a flux density [A/m]: monotone cubic in ln H over B between the points (Fritsch and Butland 1984),
+  /// straight to the origin below the first, slope mu0 beyond the last.
   amperes_per_metre field(teslas b) const;
 
  private:
@@ -53,16 +54,16 @@ struct steel {
   steel_kind kind = steel_kind::non_oriented;
   metres sheet;
   kilograms_per_cubic_metre density;
-  double stacking_factor = 0.95;       ///< least of the sheet, not of a stack
-  watts_per_kilogram rated_loss;       ///< greatest, at rated_flux_density and rated_frequency
+  double stacking_factor = 0.95;  ///< least of the sheet, not of a stack
+  watts_per_kilogram rated_loss;  ///< greatest, at rated_flux_density and rated_frequency
   teslas rated_flux_density;
   hertz rated_frequency;
-  double hysteresis_ratio = 0.7;       ///< share of the loss at 50 Hz
-  teslas flux_nominal;                 ///< quiet working peak at nominal mains
-  teslas flux_high;                    ///< just under the knee, for the highest mains
-  std::string magnetisation_from;      ///< name of the curve; another than the grade's is borrowed
+  double hysteresis_ratio = 0.7;   ///< share of the loss at 50 Hz
+  teslas flux_nominal;             ///< quiet working peak at nominal mains
+  teslas flux_high;                ///< just under the knee, for the highest mains
+  std::string magnetisation_from;  ///< name of the curve; another than the grade's is borrowed
   std::string loss_from;
-  double loss_scale = 1.0;             ///< of a borrowed loss curve, to the rated loss
+  double loss_scale = 1.0;  ///< of a borrowed loss curve, to the rated loss
   std::vector<magnetisation_point> magnetisation;
   bool polarisation = true;
   std::vector<loss_point> loss_curve;  ///< as read, not scaled
@@ -77,7 +78,8 @@ bool borrows(const steel& s);
 ///
 /// Log-log between the points of a curve at its frequency; between frequencies by the two-term split p_h f + p_e f^2,
 /// from two curves where there are two, else with the grade's hysteresis share at 50 Hz. Beyond a curve's ends the last
-/// piece goes on, flagged. Source: two-term split, derived from the loss curves. Checked: tests/iron/steel.cpp, M-19 at 60 Hz.
+/// piece goes on, flagged. Source: two-term split, derived from the loss curves. Checked: tests/iron/steel.cpp, M-19 at
+/// 60 Hz.
 class loss_law {
  public:
   explicit loss_law(const steel& s);

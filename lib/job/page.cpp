@@ -19,14 +19,16 @@ class watch {
       const std::string key = parsed.get<std::string>();
       frames_.back().at = key;
       if (!frames_.back().keys.insert(key).second) {
-        faults_.push_back(wording::other("repeated-key", origin_ + " " + pointer(), "the key " + wording::quoted(key) + " a second time",
-                                         "each key once", "the earlier one would have been lost"));
+        faults_.push_back(wording::other("repeated-key", origin_ + " " + pointer(),
+                                         "the key " + wording::quoted(key) + " a second time", "each key once",
+                                         "the earlier one would have been lost"));
       }
     } else if (event == e::object_start || event == e::array_start) {
       step();
       frames_.push_back({event == e::array_start, -1, {}, {}});
       if (frames_.size() > deepest) {
-        throw refused(wording::other("too-deep", origin_, "more than " + std::to_string(deepest) + " levels of nesting", "a job"));
+        throw refused(wording::other("too-deep", origin_, "more than " + std::to_string(deepest) + " levels of nesting",
+                                     "a job"));
       }
     } else if (event == e::object_end || event == e::array_end) {
       frames_.pop_back();
@@ -68,34 +70,43 @@ std::string syntax_words(const std::string& what) {
 
 std::string as_written(const json& value) {
   switch (value.type()) {
-    case json::value_t::object: return "an object";
-    case json::value_t::array: return "a list";
-    case json::value_t::string: return wording::quoted(value.get_ref<const std::string&>());
-    case json::value_t::null: return "null";
-    case json::value_t::boolean: return value.get<bool>() ? "true" : "false";
-    default: return "the number " + value.dump();
+    case json::value_t::object:
+      return "an object";
+    case json::value_t::array:
+      return "a list";
+    case json::value_t::string:
+      return wording::quoted(value.get_ref<const std::string&>());
+    case json::value_t::null:
+      return "null";
+    case json::value_t::boolean:
+      return value.get<bool>() ? "true" : "false";
+    default:
+      return "the number " + value.dump();
   }
 }
 
 json parse(std::string_view text, const std::string& origin) {
   if (text.starts_with("\xEF\xBB\xBF")) text.remove_prefix(3);
   if (text.find_first_not_of(" \t\r\n") == std::string_view::npos) {
-    throw refused(wording::other("empty", origin, "an empty file", "a job in JSON, beginning with {\"format\": \"turnwright-job/1\", ..."));
+    throw refused(wording::other("empty", origin, "an empty file",
+                                 "a job in JSON, beginning with {\"format\": \"turnwright-job/1\", ..."));
   }
   std::vector<remark> faults;
   json node;
   try {
     node = json::parse(text.begin(), text.end(), json::parser_callback_t(watch(origin, faults)), true, true);
   } catch (const nlohmann::json::exception& why) {
-    throw refused(wording::other("syntax", origin, "text that is no JSON: " + syntax_words(why.what()), "a job in JSON",
-                                 "look at the line and column named; a comma, a bracket or a quotation mark is most often what is missing"));
+    throw refused(wording::other(
+        "syntax", origin, "text that is no JSON: " + syntax_words(why.what()), "a job in JSON",
+        "look at the line and column named; a comma, a bracket or a quotation mark is most often what is missing"));
   }
   if (!faults.empty()) throw refused(std::move(faults));
   if (!node.is_object()) throw refused(wording::wrong_sort(origin, as_written(node), "an object, beginning with {"));
   return node;
 }
 
-page::page(const json& node, std::string where, std::vector<remark>& faults) : node_(node), where_(std::move(where)), faults_(faults) {}
+page::page(const json& node, std::string where, std::vector<remark>& faults)
+    : node_(node), where_(std::move(where)), faults_(faults) {}
 
 bool page::has(const std::string& key) { return value(key) != nullptr; }
 
@@ -173,7 +184,8 @@ void page::not_yet(const std::string& key, const std::string& what, const std::s
 
 void page::finish() {
   for (const auto& [key, unused] : node_.items()) {
-    if (std::find(known_.begin(), known_.end(), key) == known_.end()) fault(wording::unknown_key(place(key), key, known_));
+    if (std::find(known_.begin(), known_.end(), key) == known_.end())
+      fault(wording::unknown_key(place(key), key, known_));
   }
 }
 

@@ -34,8 +34,13 @@ json core_json(const design& p) {
 }
 
 json wire_json(const wire_pick& w) {
-  return {{"size", w.wire.size}, {"bare_mm", in_mm(w.wire.bare)}, {"overall_mm", in_mm(w.overall)}, {"strands", w.strands},
-          {"grade", w.grade}, {"standing", word_of(w.wire.known_how)}, {"source", w.wire.source}};
+  return {{"size", w.wire.size},
+          {"bare_mm", in_mm(w.wire.bare)},
+          {"overall_mm", in_mm(w.overall)},
+          {"strands", w.strands},
+          {"grade", w.grade},
+          {"standing", word_of(w.wire.known_how)},
+          {"source", w.wire.source}};
 }
 
 json tap_json(const planned_tap& t) {
@@ -52,8 +57,11 @@ json half_json(const planned_half& h) {
 }
 
 json screen_json(const planned_winding& w) {
-  return {{"name", w.name}, {"kind", "screen"}, {"purpose", *w.screen == screen_kind::safety ? "safety" : "noise"},
-          {"build_mm", in_mm(w.build)}, {"wrap_under_mm", in_mm(w.wrap_under)}};
+  return {{"name", w.name},
+          {"kind", "screen"},
+          {"purpose", *w.screen == screen_kind::safety ? "safety" : "noise"},
+          {"build_mm", in_mm(w.build)},
+          {"wrap_under_mm", in_mm(w.wrap_under)}};
 }
 
 void add_place(json& j, const planned_winding& w) {
@@ -81,7 +89,11 @@ json winding_json(const planned_winding& w) {
   if (w.sections.size() > 1) {
     j["sections"] = json::array();
     for (const planned_section& s : w.sections) {
-      j["sections"].push_back({{"from_turn", s.from.count()}, {"to_turn", s.to.count()}, {"wire", wire_json(s.wire)}, {"length_m", figure(s.length)}, {"mass_kg", figure(s.mass)}});
+      j["sections"].push_back({{"from_turn", s.from.count()},
+                               {"to_turn", s.to.count()},
+                               {"wire", wire_json(s.wire)},
+                               {"length_m", figure(s.length)},
+                               {"mass_kg", figure(s.mass)}});
     }
   }
   add_place(j, w);
@@ -133,7 +145,11 @@ json setting_json(const planned_setting& s) {
 }
 
 json heat_json(const planned_heat& h) {
-  return {{"at", written(h.position)}, {"ambient_C", in_degrees(h.ambient)}, {"winding_rise_K", figure(h.winding_rise)}, {"hot_spot_C", in_degrees(h.hot_spot)}, {"core_rise_K", figure(h.core_rise)}};
+  return {{"at", written(h.position)},
+          {"ambient_C", in_degrees(h.ambient)},
+          {"winding_rise_K", figure(h.winding_rise)},
+          {"hot_spot_C", in_degrees(h.hot_spot)},
+          {"core_rise_K", figure(h.core_rise)}};
 }
 
 json window_json(const design& p) {
@@ -151,10 +167,14 @@ json window_json(const design& p) {
 
 std::string_view unit_key(kind k) {
   switch (k) {
-    case kind::resistance: return "resistance_ohm";
-    case kind::current: return "current_A";
-    case kind::power: return "power_W";
-    default: return "voltage_V";
+    case kind::resistance:
+      return "resistance_ohm";
+    case kind::current:
+      return "current_A";
+    case kind::power:
+      return "power_W";
+    default:
+      return "voltage_V";
   }
 }
 
@@ -204,13 +224,15 @@ void add_lists(json& j, const design& p) {
   j["settings"] = json::array();
   for (const planned_setting& s : p.settings) j["settings"].push_back(setting_json(s));
   j["states"] = json::array();
-  for (const planned_state& s : p.states) j["states"].push_back({{"load", s.load}, {"mains", s.mains}, {"volts", volts_json(s.on_load)}});
+  for (const planned_state& s : p.states)
+    j["states"].push_back({{"load", s.load}, {"mains", s.mains}, {"volts", volts_json(s.on_load)}});
 }
 
 void add_papers(json& j, const design& p) {
   j["leakage"] = json::array();
   for (const planned_leakage& l : p.leakage) {
-    j["leakage"].push_back({{"between", {l.a, l.b}}, {"referred_to", l.a}, {"inductance_H", figure(l.inductance)}, {"method", l.method}});
+    j["leakage"].push_back(
+        {{"between", {l.a, l.b}}, {"referred_to", l.a}, {"inductance_H", figure(l.inductance)}, {"method", l.method}});
   }
   j["mass_kg"] = figure(p.mass);
   if (p.cost) j["cost"] = figure(*p.cost);

@@ -15,13 +15,17 @@ void read_head(reading_desk& desk, page& root) {
   if (!root.has("format")) {
     desk.faults.push_back(wording::missing(root.place("format"), "\"turnwright-job/1\""));
   } else if (format && *format != "turnwright-job/1") {
-    desk.faults.push_back(wording::other("unknown-word", root.place("format"), wording::quoted(*format), "\"turnwright-job/1\""));
+    desk.faults.push_back(
+        wording::other("unknown-word", root.place("format"), wording::quoted(*format), "\"turnwright-job/1\""));
   }
   desk.out.title = root.text("title").value_or("untitled");
-  if (std::any_of(desk.out.title.begin(), desk.out.title.end(), [](char c) { return static_cast<unsigned char>(c) < 32 || c == 127; })) {
-    desk.faults.push_back(wording::other("bad-name", root.place("title"), wording::quoted(desk.out.title), "a title without control characters"));
+  if (std::any_of(desk.out.title.begin(), desk.out.title.end(),
+                  [](char c) { return static_cast<unsigned char>(c) < 32 || c == 127; })) {
+    desk.faults.push_back(wording::other("bad-name", root.place("title"), wording::quoted(desk.out.title),
+                                         "a title without control characters"));
   }
-  if (desk.out.title.size() > 400) desk.faults.push_back(wording::other("too-long", root.place("title"), "a title of more than 400 bytes", "a line"));
+  if (desk.out.title.size() > 400)
+    desk.faults.push_back(wording::other("too-long", root.place("title"), "a title of more than 400 bytes", "a line"));
 }
 
 void refuse_later_parts(page& root) {
@@ -40,7 +44,8 @@ void read_duty(reading_desk& desk, page& root) {
     duty->quantity<seconds>("full", "0 s", "1000 h");
     duty->quantity<seconds>("idle", "0 s", "1000 h");
     duty->finish();
-    desk.assume("/duty", "continuous", "no winding of this job has an idle load, so full load is reckoned all the time");
+    desk.assume("/duty", "continuous",
+                "no winding of this job has an idle load, so full load is reckoned all the time");
   } else {
     desk.assume("/duty", "continuous", "nothing else is said");
   }

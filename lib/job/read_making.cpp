@@ -14,7 +14,8 @@ using namespace literals;
 namespace {
 
 std::vector<std::string> winding_names(const demand& d) {
-  std::vector<std::string> names = d.primary.two_windings ? std::vector<std::string>{"primary A", "primary B"} : std::vector<std::string>{"primary"};
+  std::vector<std::string> names =
+      d.primary.two_windings ? std::vector<std::string>{"primary A", "primary B"} : std::vector<std::string>{"primary"};
   for (const secondary_wish& s : d.secondaries) {
     if (!s.tap_of) names.push_back(s.name);
   }
@@ -38,7 +39,8 @@ std::vector<std::string> usual_order(const demand& d) {
   std::vector<std::string> order = winding_names(d);
   order.resize(d.primary.two_windings ? 2 : 1);
   const auto follows_host = [&](const secondary_wish& s) {  // a heater that rides on a winding lies next to it
-    return s.floats_on && std::any_of(list.begin(), list.end(), [&](const auto* o) { return o->name == *s.floats_on && !o->floats_on; });
+    return s.floats_on && std::any_of(list.begin(), list.end(),
+                                      [&](const auto* o) { return o->name == *s.floats_on && !o->floats_on; });
   };
   for (const secondary_wish* s : list) {
     if (follows_host(*s)) continue;
@@ -55,9 +57,11 @@ void check_order(reading_desk& desk, page& root) {
   for (std::size_t i = 0; i < desk.out.order.size(); ++i) {
     const std::string& name = desk.out.order[i];
     const std::string where = root.place("order") + "/" + std::to_string(i);
-    if (std::find(known.begin(), known.end(), name) == known.end()) desk.faults.push_back(wording::unknown_word(where, name, known));
+    if (std::find(known.begin(), known.end(), name) == known.end())
+      desk.faults.push_back(wording::unknown_word(where, name, known));
     if (std::count(desk.out.order.begin(), desk.out.order.begin() + static_cast<std::ptrdiff_t>(i), name) > 0) {
-      desk.faults.push_back(wording::other("repeated-name", where, wording::quoted(name) + " a second time", "each winding once"));
+      desk.faults.push_back(
+          wording::other("repeated-name", where, wording::quoted(name) + " a second time", "each winding once"));
     }
   }
   for (const std::string& name : known) {
@@ -67,7 +71,9 @@ void check_order(reading_desk& desk, page& root) {
   }
 }
 
-std::optional<metres> length(page& p, const char* key, const char* least, const char* most) { return p.quantity<metres>(key, least, most); }
+std::optional<metres> length(page& p, const char* key, const char* least, const char* most) {
+  return p.quantity<metres>(key, least, most);
+}
 
 }  // namespace
 
@@ -91,7 +97,8 @@ void read_screens_and_order(reading_desk& desk, page& root) {
   }
   root.each("screens", [&](const json& node, const std::string& where) {
     if (!node.is_object()) {
-      desk.faults.push_back(wording::wrong_sort(where, as_written(node), "an object such as {\"after\": \"primary\", \"kind\": \"noise\"}"));
+      desk.faults.push_back(wording::wrong_sort(where, as_written(node),
+                                                "an object such as {\"after\": \"primary\", \"kind\": \"noise\"}"));
       return;
     }
     page s(node, where, desk.faults);
@@ -101,10 +108,14 @@ void read_screens_and_order(reading_desk& desk, page& root) {
     const auto after = s.word("after", known);
     if (!s.has("after")) desk.faults.push_back(wording::missing(s.place("after"), "the winding it lies on"));
     wish.after = after.value_or("primary");
-    wish.kind = s.word("kind", {"noise", "safety"}).value_or("noise") == "safety" ? screen_kind::safety : screen_kind::noise;
+    wish.kind =
+        s.word("kind", {"noise", "safety"}).value_or("noise") == "safety" ? screen_kind::safety : screen_kind::noise;
     s.finish();
     for (const screen_wish& other : desk.out.screens) {
-      if (other.after == wish.after) desk.faults.push_back(wording::other("repeated-name", s.place("after"), "a second screen on " + wording::quoted(wish.after), "one screen on a winding"));
+      if (other.after == wish.after)
+        desk.faults.push_back(wording::other("repeated-name", s.place("after"),
+                                             "a second screen on " + wording::quoted(wish.after),
+                                             "one screen on a winding"));
     }
     desk.out.screens.push_back(wish);
   });
@@ -126,7 +137,10 @@ void read_core(reading_desk& desk, page& root) {
     try {
       if (c.lamination) {
         const lamination& l = desk.tools.patterns.named(*c.lamination, core->place("lamination"));
-        if (!is_shell(l)) desk.faults.push_back(wording::not_yet(core->place("lamination"), "the pattern " + wording::quoted(l.name) + " without a centre limb", "EI and M patterns can be planned"));
+        if (!is_shell(l))
+          desk.faults.push_back(wording::not_yet(core->place("lamination"),
+                                                 "the pattern " + wording::quoted(l.name) + " without a centre limb",
+                                                 "EI and M patterns can be planned"));
       }
     } catch (const refused& why) {
       for (const remark& r : why.remarks()) desk.faults.push_back(r);
@@ -145,7 +159,8 @@ void read_former(reading_desk& desk, page& root) {
   if (auto f = root.object("former")) {
     const auto kind_word = f->word("kind", {"layers", "bobbin", "random", "chambers"});
     if (kind_word == "random" || kind_word == "chambers") {
-      desk.faults.push_back(wording::not_yet(f->place("kind"), "a former of the kind " + wording::quoted(*kind_word), "\"layers\" and \"bobbin\" can be planned"));
+      desk.faults.push_back(wording::not_yet(f->place("kind"), "a former of the kind " + wording::quoted(*kind_word),
+                                             "\"layers\" and \"bobbin\" can be planned"));
     }
     if (kind_word == "bobbin") desk.out.former.kind = former_kind::bobbin;
     if (!kind_word) desk.assume("/former/kind", "layers", "paper between layers, the old and repairable way");
@@ -176,7 +191,9 @@ void read_insulation(reading_desk& desk, page& root) {
   if (!has_class) desk.assume("/insulation/class", "A", "paper makes a class A coil whatever the wire");
   if (!i.margin) desk.assume("/insulation/margin", "by gauge and volts", "the larger of the two, see each winding");
   if (!i.interlayer) desk.assume("/insulation/interlayer", "by gauge and volts", "see each winding");
-  if (!i.wrap) desk.assume("/insulation/wrap", "0.3 mm; 0.4 mm beside a floating heater", "three layers, any two of which pass the test");
+  if (!i.wrap)
+    desk.assume("/insulation/wrap", "0.3 mm; 0.4 mm beside a floating heater",
+                "three layers, any two of which pass the test");
 }
 
 void read_wire(reading_desk& desk, page& root) {
@@ -186,14 +203,17 @@ void read_wire(reading_desk& desk, page& root) {
     system = p->word("system", {"metric", "awg", "swg"});
     if (system == "awg") w.system = wire_system::awg;
     if (system == "swg") w.system = wire_system::swg;
-    grade = w.system == wire_system::awg ? p->word("grade", {"single", "heavy", "1", "2"}) : p->word("grade", {"1", "2", "3"});
+    grade = w.system == wire_system::awg ? p->word("grade", {"single", "heavy", "1", "2"})
+                                         : p->word("grade", {"1", "2", "3"});
     p->finish();
   }
-  const bool bobbin = root.has("former") && root.value("former")->is_object() && root.value("former")->value("kind", json("")) == "bobbin";
+  const bool bobbin = root.has("former") && root.value("former")->is_object() &&
+                      root.value("former")->value("kind", json("")) == "bobbin";
   const bool heavy = bobbin;  // crossed wires press on each other without paper
   w.grade = grade.value_or(w.system == wire_system::awg ? (heavy ? "heavy" : "single") : (heavy ? "2" : "1"));
   if (!system) desk.assume("/wire/system", "metric", "IEC 60317 sizes");
-  if (!grade) desk.assume("/wire/grade", w.grade, heavy ? "without paper the heavier enamel" : "paper keeps the layers apart");
+  if (!grade)
+    desk.assume("/wire/grade", w.grade, heavy ? "without paper the heavier enamel" : "paper keeps the layers apart");
 }
 
 void read_limits(reading_desk& desk, page& root) {
@@ -218,15 +238,20 @@ void read_limits(reading_desk& desk, page& root) {
   const double average = letter == 'A' ? 100 : letter == 'E' ? 115 : letter == 'B' ? 120 : letter == 'F' ? 140 : 165;
   l.temperature_rise = rise.value_or(as<kelvins>(average - in_celsius(l.ambient)));
   if (!rise) {
-    desk.assume("/limits/temperature_rise", shown(l.temperature_rise, 2), std::string("class ") + letter + " average " + fixed(average, 0) + " degC less ambient (memory)");
+    desk.assume("/limits/temperature_rise", shown(l.temperature_rise, 2),
+                std::string("class ") + letter + " average " + fixed(average, 0) + " degC less ambient (memory)");
   }
 }
 
 void read_aim_and_prices(reading_desk& desk, page& root) {
   const auto aim_word = root.word("aim", {"cost", "mass", "loss", "volume", "height", "regulation"});
   const std::string word = aim_word.value_or("cost");
-  desk.out.goal = word == "mass" ? aim::mass : word == "loss" ? aim::loss : word == "volume" ? aim::volume
-                  : word == "height" ? aim::height : word == "regulation" ? aim::regulation : aim::cost;
+  desk.out.goal = word == "mass"         ? aim::mass
+                  : word == "loss"       ? aim::loss
+                  : word == "volume"     ? aim::volume
+                  : word == "height"     ? aim::height
+                  : word == "regulation" ? aim::regulation
+                                         : aim::cost;
   const bool open = !desk.out.core.lamination || !desk.out.core.stack;
   if (!aim_word && open) desk.assume("/aim", "cost", "the cheapest core that meets every limit");
   std::optional<per_kilogram> copper, steel;

@@ -32,7 +32,8 @@ std::optional<tolerance> read_tolerance(page& mains, const std::string& text) {
   const auto a = part(text.substr(0, cut + 1)), b = part(text.substr(cut + 1));
   if (!a || !b) return std::nullopt;
   if ((a->value < 0) == (b->value < 0)) {
-    mains.fault(wording::other("wrong-sort", where, wording::quoted(text), "one figure up and one down, such as \"+6 % -10 %\""));
+    mains.fault(wording::other("wrong-sort", where, wording::quoted(text),
+                               "one figure up and one down, such as \"+6 % -10 %\""));
     return std::nullopt;
   }
   return tolerance{std::max(a->value, b->value), -std::min(a->value, b->value)};
@@ -44,7 +45,8 @@ void read_frequency(reading_desk& desk, page& mains) {
   const std::string where = mains.place("frequency");
   if (!text) {
     if (!mains.has("frequency")) {
-      desk.faults.push_back(wording::missing(where, "the frequency of the mains, such as \"50 Hz\" or \"50-60 Hz\"", "60 Hz iron on 50 Hz has 20 % more flux"));
+      desk.faults.push_back(wording::missing(where, "the frequency of the mains, such as \"50 Hz\" or \"50-60 Hz\"",
+                                             "60 Hz iron on 50 Hz has 20 % more flux"));
     }
     return;
   }
@@ -75,7 +77,8 @@ std::optional<tolerance> usual_band(const catalogue& tables, volts on, hertz f, 
 std::vector<volts> read_taps(page& owner, const json& list, const std::string& where) {
   std::vector<volts> taps;
   if (!list.is_array() || list.empty()) {
-    owner.fault(wording::wrong_sort(where, as_written(list), "a list of volts such as [\"220 V\", \"230 V\", \"240 V\"]"));
+    owner.fault(
+        wording::wrong_sort(where, as_written(list), "a list of volts such as [\"220 V\", \"230 V\", \"240 V\"]"));
     return taps;
   }
   for (std::size_t i = 0; i < list.size(); ++i) {
@@ -83,25 +86,30 @@ std::vector<volts> read_taps(page& owner, const json& list, const std::string& w
     const auto v = owner.quantity_of<volts>(list[i], here, "10 V", "500 V");
     if (!v) continue;
     if (!taps.empty() && *v <= taps.back()) {
-      owner.fault(wording::other("tap-order", here, wording::quoted(list[i].get<std::string>()) + " after " + wording::quoted(written(taps.back())),
-                                 "taps in rising order from the common start"));
+      owner.fault(wording::other(
+          "tap-order", here,
+          wording::quoted(list[i].get<std::string>()) + " after " + wording::quoted(written(taps.back())),
+          "taps in rising order from the common start"));
       continue;
     }
     taps.push_back(*v);
   }
-  if (list.size() > 12) owner.fault(wording::other("out-of-range", where, std::to_string(list.size()) + " taps", "twelve at most"));
+  if (list.size() > 12)
+    owner.fault(wording::other("out-of-range", where, std::to_string(list.size()) + " taps", "twelve at most"));
   return taps;
 }
 
 void read_two_windings(reading_desk& desk, page& primary, const json& list) {
   const std::string where = primary.place("windings");
   if (!list.is_array() || list.size() != 2) {
-    desk.faults.push_back(wording::wrong_sort(where, as_written(list), "two equal windings, such as [[\"100 V\", \"120 V\"], [\"100 V\", \"120 V\"]]"));
+    desk.faults.push_back(wording::wrong_sort(
+        where, as_written(list), "two equal windings, such as [[\"100 V\", \"120 V\"], [\"100 V\", \"120 V\"]]"));
     return;
   }
   const auto a = read_taps(primary, list[0], where + "/0"), b = read_taps(primary, list[1], where + "/1");
   if (a != b) {
-    desk.faults.push_back(wording::other("unequal", where, "two windings that differ", "two equal windings: only such may be linked in parallel"));
+    desk.faults.push_back(wording::other("unequal", where, "two windings that differ",
+                                         "two equal windings: only such may be linked in parallel"));
   }
   desk.out.primary.two_windings = true;
   desk.out.primary.taps = a;
@@ -147,9 +155,17 @@ void read_primary(reading_desk& desk, page& root, const std::optional<volts>& wa
   }
   const auto on = primary->quantity<volts>("on", "10 V", "1000 V");
   p.fixed = read_wishes(desk, *primary);
-  if (p.fixed.tolerance_ratio) desk.faults.push_back(wording::not_yet(primary->place("tolerance"), "a tolerance of the primary", "its taps are whole turns, within one of their ratio"));
+  if (p.fixed.tolerance_ratio)
+    desk.faults.push_back(wording::not_yet(primary->place("tolerance"), "a tolerance of the primary",
+                                           "its taps are whole turns, within one of their ratio"));
+  if (p.fixed.n && p.fixed.n->count() < static_cast<int>(p.taps.size())) {
+    desk.faults.push_back(wording::other("out-of-range", primary->place("turns"),
+                                         std::to_string(p.fixed.n->count()) + " turns",
+                                         "at least a turn for each tap"));
+  }
   primary->finish();
-  if (p.taps.empty() || desk.faults.size() > faults_before) return;  // nothing to be said of `on` before the taps are right
+  if (p.taps.empty() || desk.faults.size() > faults_before)
+    return;  // nothing to be said of `on` before the taps are right
   if (!on) return choose_on(desk, wall, "/primary/on");
   p.on = *on;
   if (!has_nominal_position(p)) {
@@ -162,11 +178,14 @@ void read_primary(reading_desk& desk, page& root, const std::optional<volts>& wa
 void read_volts(reading_desk& desk, page& w, secondary_wish& out) {
   const auto on_load = w.text("voltage"), no_load = w.text("no_load_voltage");
   if (!w.has("voltage") && !w.has("no_load_voltage")) {
-    desk.faults.push_back(wording::missing(w.place("voltage"), "the volts on load, such as \"6.3 V\" or \"300-0-300 V\""));
+    desk.faults.push_back(
+        wording::missing(w.place("voltage"), "the volts on load, such as \"6.3 V\" or \"300-0-300 V\""));
   }
-  if (on_load && no_load) desk.faults.push_back(wording::other("either-or", w.where(), "both voltage and no_load_voltage", "one of them"));
+  if (on_load && no_load)
+    desk.faults.push_back(wording::other("either-or", w.where(), "both voltage and no_load_voltage", "one of them"));
   if (!on_load && !no_load) return;
-  const auto v = read_winding_volts(on_load ? *on_load : *no_load, w.place(on_load ? "voltage" : "no_load_voltage"), desk.faults);
+  const auto v =
+      read_winding_volts(on_load ? *on_load : *no_load, w.place(on_load ? "voltage" : "no_load_voltage"), desk.faults);
   if (!v) return;
   out.voltage = v->first;
   out.second_half = v->second;
@@ -180,8 +199,9 @@ void refuse_rails(page& w) {
     if (w.has(key) && !first) first = key;
   }
   if (first) {
-    w.not_yet(first, "a rectified load, which needs the supply solver",
-              "give the winding's own r.m.s. amperes as \"current\" (on the command line: write rms after the current)");
+    w.not_yet(
+        first, "a rectified load, which needs the supply solver",
+        "give the winding's own r.m.s. amperes as \"current\" (on the command line: write rms after the current)");
   }
   w.not_yet("load", "a load of a known transformer");
   w.not_yet("leakage_inductance", "the leakage of a known transformer");
@@ -189,7 +209,8 @@ void refuse_rails(page& w) {
 
 bool allowed_name(const std::string& name) {
   if (name.empty() || name.size() > 40 || is_primary_name(name) || name == "core" || name == "screen") return false;
-  return std::none_of(name.begin(), name.end(), [](char c) { return static_cast<unsigned char>(c) < 32 || c == '+' || c == 127; });
+  return std::none_of(name.begin(), name.end(),
+                      [](char c) { return static_cast<unsigned char>(c) < 32 || c == '+' || c == 127; });
 }
 
 secondary_wish read_secondary(reading_desk& desk, page& w) {
@@ -198,8 +219,9 @@ secondary_wish read_secondary(reading_desk& desk, page& w) {
   const auto name = w.text("name");
   if (!w.has("name")) desk.faults.push_back(wording::missing(w.place("name"), "a name, such as \"heaters\""));
   if (name && !allowed_name(*name)) {
-    desk.faults.push_back(wording::other("bad-name", w.place("name"), wording::quoted(*name),
-                                         "a name of 1 to 40 characters that is not primary, core or screen and holds no '+'"));
+    desk.faults.push_back(
+        wording::other("bad-name", w.place("name"), wording::quoted(*name),
+                       "a name of 1 to 40 characters that is not primary, core or screen and holds no '+'"));
   }
   out.name = name.value_or("");
   read_volts(desk, w, out);
@@ -215,14 +237,16 @@ secondary_wish read_secondary(reading_desk& desk, page& w) {
   out.tap_of = w.text("tap_of");
   out.fixed = read_wishes(desk, w);
   if (out.tap_of && (out.second_half || out.centre_tap)) {
-    desk.faults.push_back(wording::other("tap", w.where(), "a tap of another winding with a centre tap of its own", "a plain tap"));
+    desk.faults.push_back(
+        wording::other("tap", w.where(), "a tap of another winding with a centre tap of its own", "a plain tap"));
   }
   w.finish();
   return out;
 }
 
 const secondary_wish* find(const demand& d, const std::string& name) {
-  const auto at = std::find_if(d.secondaries.begin(), d.secondaries.end(), [&](const auto& s) { return s.name == name; });
+  const auto at =
+      std::find_if(d.secondaries.begin(), d.secondaries.end(), [&](const auto& s) { return s.name == name; });
   return at == d.secondaries.end() ? nullptr : &*at;
 }
 
@@ -234,7 +258,9 @@ void check_references(reading_desk& desk, const std::string& place) {
     const std::string here = place + "/" + std::to_string(i);
     for (std::size_t j = 0; j < i; ++j) {
       if (desk.out.secondaries[j].name == s.name) {
-        desk.faults.push_back(wording::other("repeated-name", here + "/name", wording::quoted(s.name) + " a second time", "a name of its own for every winding"));
+        desk.faults.push_back(wording::other("repeated-name", here + "/name",
+                                             wording::quoted(s.name) + " a second time",
+                                             "a name of its own for every winding"));
       }
     }
     std::vector<std::string> others = names;
@@ -245,17 +271,21 @@ void check_references(reading_desk& desk, const std::string& place) {
       }
     }
     const secondary_wish* under = s.floats_on ? find(desk.out, *s.floats_on) : nullptr;
-    if (under && (under->floats_on || under->tap_of)) {
-      desk.faults.push_back(wording::other("floats", here + "/floats_on", wording::quoted(*s.floats_on) + ", which itself rides on another winding",
+    if (under && under != &s && (under->floats_on || under->tap_of)) {
+      desk.faults.push_back(wording::other("floats", here + "/floats_on",
+                                           wording::quoted(*s.floats_on) + ", which itself rides on another winding",
                                            "a winding that makes its own potential, such as the HT"));
     }
     const bool equal_halves = s.centre_tap || (s.second_half && *s.second_half == s.voltage);
     if (equal_halves && s.fixed.n && s.fixed.n->count() % 2 != 0) {
-      desk.faults.push_back(wording::other("odd-turns", here + "/turns", std::to_string(s.fixed.n->count()) + " turns with a centre tap", "an even number of turns"));
+      desk.faults.push_back(wording::other("odd-turns", here + "/turns",
+                                           std::to_string(s.fixed.n->count()) + " turns with a centre tap",
+                                           "an even number of turns"));
     }
     const secondary_wish* host = s.tap_of ? find(desk.out, *s.tap_of) : nullptr;
     if (host && (host->tap_of || s.voltage >= host->voltage)) {
-      desk.faults.push_back(wording::other("tap", here, wording::quoted(s.name) + " as a tap of " + wording::quoted(host->name),
+      desk.faults.push_back(wording::other("tap", here,
+                                           wording::quoted(s.name) + " as a tap of " + wording::quoted(host->name),
                                            "fewer volts than the half it is a tap of, which is no tap itself"));
     }
   }
@@ -272,8 +302,10 @@ winding_wishes read_wishes(reading_desk& desk, page& winding) {
     try {
       const looked_up_gauge found = desk.tools.wire.look_up(*wire, winding.place("wire"));
       if (!found.exact || !film_of(found.wire, desk.out.wire.grade)) {
-        desk.faults.push_back(wording::other("unknown-name", winding.place("wire"), wording::quoted(*wire), "a size of the table whose enamel is known",
-                                             found.exact ? "the table has no enamel figures for it" : "the nearest size is " + wording::quoted(found.wire.size)));
+        desk.faults.push_back(wording::other("unknown-name", winding.place("wire"), wording::quoted(*wire),
+                                             "a size of the table whose enamel is known",
+                                             found.exact ? "the table has no enamel figures for it"
+                                                         : "the nearest size is " + wording::quoted(found.wire.size)));
       }
       w.wire = *wire;
     } catch (const refused& why) {
@@ -305,7 +337,8 @@ void read_mains_and_primary(reading_desk& desk, page& root) {
     if (const auto text = mains->text("tolerance")) band = read_tolerance(*mains, *text);
     mains->finish();
   } else if (!root.has("mains")) {
-    desk.faults.push_back(wording::missing(root.place("mains"), "the mains, such as {\"frequency\": \"50 Hz\", \"tolerance\": \"10 %\"}"));
+    desk.faults.push_back(wording::missing(root.place("mains"),
+                                           "the mains, such as {\"frequency\": \"50 Hz\", \"tolerance\": \"10 %\"}"));
   }
   read_primary(desk, root, wall);
   if (desk.out.primary.taps.empty()) return;
@@ -313,7 +346,8 @@ void read_mains_and_primary(reading_desk& desk, page& root) {
   if (!has_band) {
     std::string region = "no supply of the table fits";
     band = usual_band(desk.tables, desk.out.primary.on, m.frequency, region).value_or(tolerance{0.1, 0.1});
-    desk.assume("/mains/tolerance", "+" + written(ratio{band->over}) + " -" + written(ratio{band->under}), "band of the supply: " + region);
+    desk.assume("/mains/tolerance", "+" + written(ratio{band->over}) + " -" + written(ratio{band->under}),
+                "band of the supply: " + region);
   }
   if (band) {
     m.over_ratio = band->over;
@@ -337,16 +371,20 @@ void read_secondaries(reading_desk& desk, page& root) {
     desk.out.secondaries.push_back(read_secondary(desk, w));
   });
   const json* list = root.value("secondaries");
-  if (list->is_array() && list->empty()) desk.faults.push_back(wording::missing(root.place("secondaries"), "at least one winding"));
+  if (list->is_array() && list->empty())
+    desk.faults.push_back(wording::missing(root.place("secondaries"), "at least one winding"));
   if (list->is_array() && list->size() > 24) {
-    desk.faults.push_back(wording::other("out-of-range", root.place("secondaries"), std::to_string(list->size()) + " windings", "24 at most"));
+    desk.faults.push_back(wording::other("out-of-range", root.place("secondaries"),
+                                         std::to_string(list->size()) + " windings", "24 at most"));
   }
   check_references(desk, root.place("secondaries"));
   for (std::size_t i = 0; i < desk.out.secondaries.size(); ++i) {
     const secondary_wish& s = desk.out.secondaries[i];
     if (s.fixed.tolerance_ratio) continue;
     desk.assume("/secondaries/" + std::to_string(i) + "/tolerance", written(tolerance_of(s)),
-                is_heater(s) ? "valves stand 5 %, less what the mains takes" : s.tap_of ? "a bias must not fall short" : "practice");
+                is_heater(s) ? "valves stand 5 %, less what the mains takes"
+                : s.tap_of   ? "a bias must not fall short"
+                             : "practice");
   }
 }
 

@@ -15,7 +15,9 @@ struct reading_desk {
   std::vector<remark>& faults;
 
   /// Notes a default that was filled in.
-  void assume(std::string path, std::string value, std::string why) { out.assumed.push_back({std::move(path), std::move(value), std::move(why)}); }
+  void assume(std::string path, std::string value, std::string why) {
+    out.assumed.push_back({std::move(path), std::move(value), std::move(why)});
+  }
 };
 
 void read_mains_and_primary(reading_desk& desk, page& root);

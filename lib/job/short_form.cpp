@@ -36,15 +36,22 @@ struct ending {
   std::string rectifier;
 };
 
-ending read_ending(const std::vector<std::string>& words, std::size_t at, const std::string& where, std::vector<remark>& faults) {
+ending read_ending(const std::vector<std::string>& words, std::size_t at, const std::string& where,
+                   std::vector<remark>& faults) {
   ending e;
   for (; at < words.size(); ++at) {
     const std::string& w = words[at];
-    if (w == "dc") e.dc = true;
-    else if (w == "rms") e.rms = true;
-    else if (w == "ct") e.centre_tap = true;
-    else if (e.rectifier.empty() && (w == "silicon" || w.find_first_of("0123456789") != std::string::npos)) e.rectifier = w;
-    else faults.push_back(wording::other("unknown-word", where, wording::quoted(w), "after the current only: rms, dc, ct or a rectifier"));
+    if (w == "dc")
+      e.dc = true;
+    else if (w == "rms")
+      e.rms = true;
+    else if (w == "ct")
+      e.centre_tap = true;
+    else if (e.rectifier.empty() && (w == "silicon" || w.find_first_of("0123456789") != std::string::npos))
+      e.rectifier = w;
+    else
+      faults.push_back(wording::other("unknown-word", where, wording::quoted(w),
+                                      "after the current only: rms, dc, ct or a rectifier"));
   }
   if (e.dc && e.rms) faults.push_back(wording::other("either-or", where, "both dc and rms", "one of them"));
   return e;
@@ -54,7 +61,8 @@ std::optional<json> winding_of(const std::string& text, std::vector<remark>& fau
   const std::string where = "--winding " + wording::quoted(text);
   const std::size_t colon = text.find(':');
   if (colon == std::string::npos || colon == 0) {
-    faults.push_back(wording::other("short-form", where, "no name before a colon", "NAME: VOLTS CURRENT, such as \"heaters: 6.3 V 4 A ct\""));
+    faults.push_back(wording::other("short-form", where, "no name before a colon",
+                                    "NAME: VOLTS CURRENT, such as \"heaters: 6.3 V 4 A ct\""));
     return std::nullopt;
   }
   const auto words = words_of_text(text.substr(colon + 1));
@@ -94,7 +102,8 @@ std::string job_of(const short_form& s) {
   const std::string wall = take_figure(words, at);
   const std::string frequency = take_figure(words, at);
   if (wall.empty() || frequency.empty() || at != words.size()) {
-    faults.push_back(wording::other("short-form", "--mains", wording::quoted(s.mains), "volts and frequency, such as \"230 V 50 Hz\""));
+    faults.push_back(wording::other("short-form", "--mains", wording::quoted(s.mains),
+                                    "volts and frequency, such as \"230 V 50 Hz\""));
   }
   job["mains"] = {{"frequency", frequency}, {"voltage", wall}};
   job["primary"] = {{"taps", json::array({wall})}};
@@ -102,7 +111,8 @@ std::string job_of(const short_form& s) {
   for (const std::string& text : s.windings) {
     if (const auto w = winding_of(text, faults)) job["secondaries"].push_back(*w);
   }
-  if (s.windings.empty()) faults.push_back(wording::missing("--winding", "at least one winding, such as \"heaters: 6.3 V 4 A ct\""));
+  if (s.windings.empty())
+    faults.push_back(wording::missing("--winding", "at least one winding, such as \"heaters: 6.3 V 4 A ct\""));
   if (!faults.empty()) throw refused(std::move(faults));
   return job.dump(2) + "\n";
 }

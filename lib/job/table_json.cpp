@@ -59,9 +59,12 @@ std::string json_of(const lamination& l) {
 std::string json_of(const steel& s, const std::optional<steel_point>& at) {
   json curve = json::array(), loss = json::array();
   const char* value_key = s.polarisation ? "polarisation_T" : "flux_density_T";
-  for (const magnetisation_point& p : s.magnetisation) curve.push_back({{value_key, figure(p.value)}, {"field_A_per_m", figure(p.field)}});
+  for (const magnetisation_point& p : s.magnetisation)
+    curve.push_back({{value_key, figure(p.value)}, {"field_A_per_m", figure(p.field)}});
   for (const loss_point& p : s.loss_curve) {
-    loss.push_back({{"frequency_Hz", figure(p.frequency)}, {"flux_density_T", figure(p.flux_density)}, {"loss_W_per_kg", figure(p.loss)}});
+    loss.push_back({{"frequency_Hz", figure(p.frequency)},
+                    {"flux_density_T", figure(p.flux_density)},
+                    {"loss_W_per_kg", figure(p.loss)}});
   }
   json row{{"name", s.name},
            {"also", s.also},
@@ -81,8 +84,10 @@ std::string json_of(const steel& s, const std::optional<steel_point>& at) {
   if (at) {
     const magnetisation_curve bh(s.magnetisation, s.polarisation);
     const steel_loss p = loss_law(s).at(at->flux_density, at->frequency);
-    j["at"] = {{"flux_density_T", figure(at->flux_density)}, {"frequency_Hz", figure(at->frequency)},
-               {"field_A_per_m", figure(bh.field(at->flux_density))}, {"loss_W_per_kg", figure(p.value)}};
+    j["at"] = {{"flux_density_T", figure(at->flux_density)},
+               {"frequency_Hz", figure(at->frequency)},
+               {"field_A_per_m", figure(bh.field(at->flux_density))},
+               {"loss_W_per_kg", figure(p.value)}};
     if (p.beyond_curve) j["at"]["beyond_curve"] = true;
   }
   return text_of(j);

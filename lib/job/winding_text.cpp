@@ -18,7 +18,8 @@ std::string without(std::string text, const std::string& tail, bool& found) {
   return text;
 }
 
-std::optional<volts> in_range(const std::string& text, const std::string& whole, const std::string& where, std::vector<remark>& faults) {
+std::optional<volts> in_range(const std::string& text, const std::string& whole, const std::string& where,
+                              std::vector<remark>& faults) {
   const reading<volts> r = read<volts>(text);
   if (!r.value) {
     faults.push_back(wording::quantity(where, whole, r.fault));
@@ -33,7 +34,8 @@ std::optional<volts> in_range(const std::string& text, const std::string& whole,
 
 }  // namespace
 
-std::optional<winding_volts> read_winding_volts(const std::string& text, const std::string& where, std::vector<remark>& faults) {
+std::optional<winding_volts> read_winding_volts(const std::string& text, const std::string& where,
+                                                std::vector<remark>& faults) {
   winding_volts out;
   bool on_load = false;
   const std::string figure = without(without(text, "no load", out.no_load), "on load", on_load);

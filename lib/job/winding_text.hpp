@@ -17,6 +17,7 @@ struct winding_volts {
 };
 
 /// Reads the volts of a winding; faults are noted with the place.
-std::optional<winding_volts> read_winding_volts(const std::string& text, const std::string& where, std::vector<remark>& faults);
+std::optional<winding_volts> read_winding_volts(const std::string& text, const std::string& where,
+                                                std::vector<remark>& faults);
 
 }  // namespace turnwright::job_detail

@@ -8,9 +8,30 @@
 namespace turnwright {
 
 enum class kind {
-  voltage, current, resistance, power, apparent_power, inductance, capacitance, flux_density, flux, frequency, time,
-  length, area, mass, energy, temperature_point, temperature_rise, field, current_density, specific_loss, valve_constant,
-  per_mass, ratio, resistance_per_length
+  voltage,
+  current,
+  resistance,
+  power,
+  apparent_power,
+  inductance,
+  capacitance,
+  flux_density,
+  flux,
+  frequency,
+  time,
+  length,
+  area,
+  mass,
+  energy,
+  temperature_point,
+  temperature_rise,
+  field,
+  current_density,
+  specific_loss,
+  valve_constant,
+  per_mass,
+  ratio,
+  resistance_per_length
 };
 
 /// How a kind is spoken of: "a voltage", "volts (V)", "230 V".
@@ -31,9 +52,9 @@ struct ratio {
 
 template <class Q>
 struct kind_of;
-#define TURNWRIGHT_KIND(type, k) \
-  template <>                    \
-  struct kind_of<type> {         \
+#define TURNWRIGHT_KIND(type, k)           \
+  template <>                              \
+  struct kind_of<type> {                   \
     static constexpr kind value = kind::k; \
   };
 TURNWRIGHT_KIND(volts, voltage)

@@ -5,10 +5,8 @@
 
 namespace turnwright::literals {
 
-#define TURNWRIGHT_LITERAL(suffix, type, factor)                                             \
-  constexpr type operator""_##suffix(long double x) {                                        \
-    return as<type>(static_cast<double>(x) * (factor));                                      \
-  }                                                                                          \
+#define TURNWRIGHT_LITERAL(suffix, type, factor)                                                            \
+  constexpr type operator""_##suffix(long double x) { return as<type>(static_cast<double>(x) * (factor)); } \
   constexpr type operator""_##suffix(unsigned long long x) { return as<type>(static_cast<double>(x) * (factor)); }
 
 TURNWRIGHT_LITERAL(V, volts, 1.0)

@@ -5,8 +5,8 @@
 #include <boost/units/base_dimension.hpp>
 #include <boost/units/base_unit.hpp>
 #include <boost/units/quantity.hpp>
-#include <boost/units/systems/si/base.hpp>
 #include <boost/units/systems/si/area.hpp>
+#include <boost/units/systems/si/base.hpp>
 #include <boost/units/systems/si/capacitance.hpp>
 #include <boost/units/systems/si/current.hpp>
 #include <boost/units/systems/si/dimensionless.hpp>
@@ -46,8 +46,7 @@ struct apparent_base_unit : units::base_unit<apparent_base_unit, apparent_dimens
   static std::string symbol() { return "apparent"; }
 };
 
-using volt_to_three_halves =
-    units::power_typeof_helper<si::electric_potential, units::static_rational<3, 2>>::type;
+using volt_to_three_halves = units::power_typeof_helper<si::electric_potential, units::static_rational<3, 2>>::type;
 }  // namespace measure_detail
 
 template <class Unit>

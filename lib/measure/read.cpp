@@ -102,7 +102,9 @@ std::optional<unit_match> match_unit(std::string_view text) {
   return std::nullopt;
 }
 
-plain_reading refused_as(misread::why reason, kind wanted) { return {std::nullopt, {reason, wanted, std::nullopt, {}}}; }
+plain_reading refused_as(misread::why reason, kind wanted) {
+  return {std::nullopt, {reason, wanted, std::nullopt, {}}};
+}
 
 }  // namespace
 

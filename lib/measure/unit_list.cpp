@@ -59,8 +59,9 @@ constexpr std::array units_known{
 };
 
 constexpr std::array prefixes_known{
-    prefix_entry{"p", -12}, prefix_entry{"n", -9}, prefix_entry{"u", -6}, prefix_entry{"µ", -6},  // U+00B5
-    prefix_entry{"\u03bc", -6}, prefix_entry{"m", -3}, prefix_entry{"k", 3}, prefix_entry{"M", 6}, prefix_entry{"G", 9},
+    prefix_entry{"p", -12},     prefix_entry{"n", -9}, prefix_entry{"u", -6}, prefix_entry{"µ", -6},  // U+00B5
+    prefix_entry{"\u03bc", -6}, prefix_entry{"m", -3}, prefix_entry{"k", 3},  prefix_entry{"M", 6},
+    prefix_entry{"G", 9},
 };
 
 }  // namespace

@@ -75,19 +75,32 @@ struct habit {
 };
 habit fixed_habit(kind k) {
   switch (k) {
-    case kind::length: return {"mm", -3};
-    case kind::area: return {"mm2", -6};
-    case kind::current_density: return {"A/mm2", 6};
-    case kind::mass: return {"kg", 0};
-    case kind::ratio: return {"%", -2};
-    case kind::temperature_point: return {"degC", 0};
-    case kind::temperature_rise: return {"K", 0};
-    case kind::frequency: return {"Hz", 0};
-    case kind::voltage: return {"V", 0};
-    case kind::per_mass: return {"/kg", 0};
-    case kind::specific_loss: return {"W/kg", 0};
-    case kind::flux_density: return {"T", 0};
-    default: return {"", 0};
+    case kind::length:
+      return {"mm", -3};
+    case kind::area:
+      return {"mm2", -6};
+    case kind::current_density:
+      return {"A/mm2", 6};
+    case kind::mass:
+      return {"kg", 0};
+    case kind::ratio:
+      return {"%", -2};
+    case kind::temperature_point:
+      return {"degC", 0};
+    case kind::temperature_rise:
+      return {"K", 0};
+    case kind::frequency:
+      return {"Hz", 0};
+    case kind::voltage:
+      return {"V", 0};
+    case kind::per_mass:
+      return {"/kg", 0};
+    case kind::specific_loss:
+      return {"W/kg", 0};
+    case kind::flux_density:
+      return {"T", 0};
+    default:
+      return {"", 0};
   }
 }
 

@@ -26,7 +26,8 @@ std::vector<load_ratio> ratios_of(const demand& d, const draft& f, const running
   for (std::size_t k = 0; k < ports.size(); ++k) {
     if (d.secondaries[ports[k].secondary].no_load) continue;
     // Where half the volts are lost the core is hopeless; more turns would only lose more.
-    const double ratio = std::max(0.5, plain(r.electric.ports[k].on_load.plain()) / plain(r.electric.ports[k].no_load.plain()));
+    const double ratio =
+        std::max(0.5, plain(r.electric.ports[k].on_load.plain()) / plain(r.electric.ports[k].no_load.plain()));
     (ports[k].half == 0 ? all[ports[k].secondary].first : all[ports[k].secondary].second) = ratio;
   }
   return all;
@@ -60,8 +61,8 @@ struct settled_round {
 };
 
 // Turns and wires at one density until both stand still. They are whole numbers, so left alone they may wander: after
-// three rounds the primary and the sizing currents are held, and only the secondaries still follow their volts. Those may
-// end in a ring; then the member whose volts are best is kept.
+// three rounds the primary and the sizing currents are held, and only the secondaries still follow their volts. Those
+// may end in a ring; then the member whose volts are best is kept.
 attempt settle(const demand& d, const shop& s, const core_body& core, const flux_limits& flux,
                amperes_per_square_metre density, bool stepped) {
   constexpr int free_rounds = 3, most_rounds = 12;
@@ -74,9 +75,12 @@ attempt settle(const demand& d, const shop& s, const core_body& core, const flux
   while (out.rounds < most_rounds) {
     ++out.rounds;
     const bool held = out.rounds > free_rounds;
-    const turn_set n = held ? choose_secondaries(d, seen.back().f.n.primary, ratios) : choose_turns(d, core, flux, ratios);
-    const wire_set wires = pick_wires(d, s, core.choice().pattern.tongue, sizing_currents(d, line, stepped), density, weights);
-    const auto again = std::find_if(seen.begin(), seen.end(), [&](const settled_round& o) { return o.f.n == n && same_wires(o.wires, wires); });
+    const turn_set n =
+        held ? choose_secondaries(d, seen.back().f.n.primary, ratios) : choose_turns(d, core, flux, ratios);
+    const wire_set wires =
+        pick_wires(d, s, core.choice().pattern.tongue, sizing_currents(d, line, stepped), density, weights);
+    const auto again = std::find_if(seen.begin(), seen.end(),
+                                    [&](const settled_round& o) { return o.f.n == n && same_wires(o.wires, wires); });
     if (again != seen.end()) {
       seen.erase(seen.begin(), again);  // what is left is the fixed point, or the ring
       out.stood_still = true;
@@ -92,7 +96,8 @@ attempt settle(const demand& d, const shop& s, const core_body& core, const flux
     const double score = score_of(d, f, r);
     seen.push_back({std::move(f), std::move(r), wires, score});
   }
-  settled_round& kept = *std::min_element(seen.begin(), seen.end(), [](const auto& a, const auto& b) { return a.score < b.score; });
+  settled_round& kept =
+      *std::min_element(seen.begin(), seen.end(), [](const auto& a, const auto& b) { return a.score < b.score; });
   out.volts_score = kept.score;
   out.coil = std::move(kept.f);
   out.nominal = std::move(kept.r);
@@ -106,11 +111,12 @@ limit_test at_most(std::string code, std::string what, double found, double boun
 void test_resistances(const demand& d, attempt& a) {
   const auto test = [&](const winding_wishes& w, const std::string& name, ohms found) {
     if (w.resistance_most) {
-      a.limits.push_back(at_most("regulation", "resistance of " + name + " at 20 degC", plain(found), plain(*w.resistance_most), kind::resistance));
+      a.limits.push_back(at_most("regulation", "resistance of " + name + " at 20 degC", plain(found),
+                                 plain(*w.resistance_most), kind::resistance));
     }
     if (w.resistance_least) {
-      a.limits.push_back({"rectifier-limits", "resistance of " + name + " at 20 degC, at least", plain(found), plain(*w.resistance_least),
-                          kind::resistance, found >= *w.resistance_least});
+      a.limits.push_back({"rectifier-limits", "resistance of " + name + " at 20 degC, at least", plain(found),
+                          plain(*w.resistance_least), kind::resistance, found >= *w.resistance_least});
     }
   };
   for (const coil_draft& c : a.coil.coils) {
@@ -123,11 +129,13 @@ void test_resistances(const demand& d, attempt& a) {
 void test_former(const demand& d, attempt& a) {
   const lamination& l = a.coil.core.choice().pattern;
   if (d.former.winding_width) {
-    a.limits.push_back(at_most("window-fit", "winding width that the job fixes, in the window's length", plain(*d.former.winding_width), plain(l.window_length), kind::length));
+    a.limits.push_back(at_most("window-fit", "winding width that the job fixes, in the window's length",
+                               plain(*d.former.winding_width), plain(l.window_length), kind::length));
   }
   if (d.former.winding_height) {
-    a.limits.push_back(at_most("window-fit", "winding height that the job fixes, in the window less the wall", plain(*d.former.winding_height),
-                               std::max(0.0, plain(l.window_width - a.coil.room.wall)), kind::length));
+    a.limits.push_back(at_most("window-fit", "winding height that the job fixes, in the window less the wall",
+                               plain(*d.former.winding_height), std::max(0.0, plain(l.window_width - a.coil.room.wall)),
+                               kind::length));
   }
 }
 
@@ -138,18 +146,24 @@ void test_limits(const demand& d, attempt& a) {
   fit.holds = fit.holds && !f.too_wide;
   a.limits.push_back(fit);
   test_former(d, a);
-  a.limits.push_back(at_most("heat", "rise of the hottest winding at the highest mains", plain(hottest_winding(a.high)), plain(l.temperature_rise), kind::temperature_rise));
+  a.limits.push_back(at_most("heat", "rise of the hottest winding at the highest mains", plain(hottest_winding(a.high)),
+                             plain(l.temperature_rise), kind::temperature_rise));
   a.limits.push_back(at_most("flux-high", "flux density at nominal mains, no load",
-                             plain(flux_at(d, f.core, f.n.primary, a.nominal.at, 1.0)), plain(a.flux.nominal), kind::flux_density));
-  a.limits.push_back(at_most("flux-high", "flux density at highest mains on the worst tap", plain(worst_flux(d, f.core, f.n.primary)),
-                             plain(a.flux.high), kind::flux_density));
+                             plain(flux_at(d, f.core, f.n.primary, a.nominal.at, 1.0)), plain(a.flux.nominal),
+                             kind::flux_density));
+  a.limits.push_back(at_most("flux-high", "flux density at highest mains on the worst tap",
+                             plain(worst_flux(d, f.core, f.n.primary)), plain(a.flux.high), kind::flux_density));
   if (l.current_density) {
-    a.limits.push_back(at_most("heat", "current density", plain(worst_density(d, f, a.nominal)), plain(*l.current_density), kind::current_density));
+    a.limits.push_back(at_most("heat", "current density", plain(worst_density(d, f, a.nominal)),
+                               plain(*l.current_density), kind::current_density));
   }
   if (l.regulation_ratio) {
-    a.limits.push_back(at_most("regulation", "regulation of the worst winding", worst_regulation(a.nominal), *l.regulation_ratio, kind::ratio));
+    a.limits.push_back(at_most("regulation", "regulation of the worst winding", worst_regulation(a.nominal),
+                               *l.regulation_ratio, kind::ratio));
   }
-  if (l.height) a.limits.push_back(at_most("height-limit", "height over the yokes", plain(f.core.choice().pattern.height), plain(*l.height), kind::length));
+  if (l.height)
+    a.limits.push_back(at_most("height-limit", "height over the yokes", plain(f.core.choice().pattern.height),
+                               plain(*l.height), kind::length));
   if (l.mass) a.limits.push_back(at_most("mass-limit", "mass", plain(total_mass(f)), plain(*l.mass), kind::mass));
   test_resistances(d, a);
 }
@@ -163,10 +177,11 @@ flux_limits limits_of(const demand& d, const steel& grade) {
 }
 
 std::string summary(const attempt& a) {
-  return a.coil.core.choice().pattern.name + " x " + shown(a.coil.core.choice().stack) + ", " + shown(a.density) + ": fill " +
-         fixed(100 * a.coil.fill, 1) + " %, rise " + fixed(plain(hottest_winding(a.high)), 1) + " K, volts " + fixed(100 * a.volts_score, 0) +
-         " % of tolerance, rounds " + std::to_string(a.rounds) + (a.stood_still ? "" : " (no fixed point)") +
-         ", heat steps " + std::to_string(a.nominal.steps) + ", residual " + shortest(rounded_to(a.nominal.residual_K, 2)) + " K";
+  return a.coil.core.choice().pattern.name + " x " + shown(a.coil.core.choice().stack) + ", " + shown(a.density) +
+         ": fill " + fixed(100 * a.coil.fill, 1) + " %, rise " + fixed(plain(hottest_winding(a.high)), 1) +
+         " K, volts " + fixed(100 * a.volts_score, 0) + " % of tolerance, rounds " + std::to_string(a.rounds) +
+         (a.stood_still ? "" : " (no fixed point)") + ", heat steps " + std::to_string(a.nominal.steps) +
+         ", residual " + shortest(rounded_to(a.nominal.residual_K, 2)) + " K";
 }
 
 }  // namespace
@@ -179,7 +194,8 @@ double limit_test::excess() const {
 bool attempt::comfortable() const { return windable() && coil.fill <= comfortable_fill; }
 
 bool attempt::windable() const {
-  return volts_score <= 1 + 1e-9 && std::all_of(limits.begin(), limits.end(), [](const limit_test& t) { return t.holds; });
+  return volts_score <= 1 + 1e-9 &&
+         std::all_of(limits.begin(), limits.end(), [](const limit_test& t) { return t.holds; });
 }
 
 double attempt::excess() const {
@@ -197,7 +213,8 @@ amperes_per_square_metre worst_density(const demand& d, const draft& f, const ru
     for (const coil_draft& c : f.coils) {
       if (!c.role.primary) continue;
       const bool second = c.role.which == 1;
-      worst = std::max(worst, density_in(c, line * (second ? share.b : share.a), f.n.primary[second ? *p.tap_b : p.tap_a]));
+      worst =
+          std::max(worst, density_in(c, line * (second ? share.b : share.a), f.n.primary[second ? *p.tap_b : p.tap_a]));
     }
   }
   const auto ports = ports_of(d, f);
@@ -231,8 +248,9 @@ kilograms total_mass(const draft& f) {
 attempt wind(const demand& d, const shop& s, const core_body& core, bool stepped, std::vector<working>& workings) {
   const flux_limits flux = limits_of(d, core.choice().grade);
   const selector_position at = nominal_position(d.primary);
-  const double start = d.limits.current_density ? std::min(plain(usual_density(rating_of(d))), plain(*d.limits.current_density))
-                                                : plain(usual_density(rating_of(d)));
+  const double start = d.limits.current_density
+                           ? std::min(plain(usual_density(rating_of(d))), plain(*d.limits.current_density))
+                           : plain(usual_density(rating_of(d)));
   const auto try_density = [&](double si) {
     attempt a = settle(d, s, core, flux, as<amperes_per_square_metre>(si), stepped);
     a.high = run(d, a.coil, at, 1 + d.mains.over_ratio);
@@ -255,7 +273,8 @@ attempt wind(const demand& d, const shop& s, const core_body& core, bool stepped
   const bool thinner = tight || !holds(best, "rectifier-limits");
   const bool thicker = !holds(best, "heat") || !holds(best, "regulation") || best.volts_score > 1;
   if (!thinner && !thicker) return best;
-  const double step = thinner ? 1.06 : 1 / 1.06, end = thinner ? plain(d.limits.current_density.value_or(usual_highest_density)) : 1.0e6;
+  const double step = thinner ? 1.06 : 1 / 1.06,
+               end = thinner ? plain(d.limits.current_density.value_or(usual_highest_density)) : 1.0e6;
   // Copper shrinks no faster than the density grows, and insulation not at all.
   if (tight && best.coil.fill * start / end > 1.0) return best;
   for (double si = start * step; thinner ? si <= end : si >= end; si *= step) {

@@ -13,8 +13,8 @@ namespace turnwright {
 
 /// A limit, what was found, and whether it holds.
 struct limit_test {
-  std::string code;     ///< of the check it belongs to
-  std::string what;     ///< "rise of the hottest winding"
+  std::string code;             ///< of the check it belongs to
+  std::string what;             ///< "rise of the hottest winding"
   double found = 0, bound = 0;  ///< in the SI unit of `of`
   kind of = kind::ratio;
   bool holds = true;
@@ -25,12 +25,12 @@ struct limit_test {
 struct attempt {
   draft coil;
   running nominal;
-  running high;         ///< highest mains, at the selector position where a winding gets hottest
+  running high;  ///< highest mains, at the selector position where a winding gets hottest
   flux_limits flux;
   amperes_per_square_metre density;  ///< the common one that the wires were picked for
   std::vector<limit_test> limits;
-  double volts_score = 0;            ///< worst volts error over its tolerance
-  int rounds = 0;                    ///< of turns and wires until they stood still
+  double volts_score = 0;  ///< worst volts error over its tolerance
+  int rounds = 0;          ///< of turns and wires until they stood still
   bool stood_still = false;
   /// Whether every limit holds and every winding's volts are within its tolerance.
   bool windable() const;

@@ -17,7 +17,12 @@ std::string signed_percent(double ratio) { return (ratio > 0 ? "+" : "") + perce
 
 void add_limits(const design& p, const std::string& cure, std::vector<check>& all) {
   for (const limit_test& t : p.made.limits) {
-    check c{t.code, t.holds ? level::pass : level::stop, t.what, shown_plain(t.found, t.of, 4), shown_plain(t.bound, t.of, 4), ""};
+    check c{t.code,
+            t.holds ? level::pass : level::stop,
+            t.what,
+            shown_plain(t.found, t.of, 4),
+            shown_plain(t.bound, t.of, 4),
+            ""};
     const bool build = t.code == "window-fit" && t.of == kind::ratio;
     const bool tight = build && t.holds && t.found > comfortable_fill;
     const bool no_turn = build && p.made.coil.too_wide;
@@ -39,13 +44,16 @@ void add_limits(const design& p, const std::string& cure, std::vector<check>& al
 void add_volts(const design& p, const std::string& cure, std::vector<check>& all) {
   for (const planned_winding& w : p.windings) {
     if (w.screen || w.primary) continue;
-    const auto wish = std::find_if(p.wanted.secondaries.begin(), p.wanted.secondaries.end(), [&](const auto& s) { return s.name == w.name; });
+    const auto wish = std::find_if(p.wanted.secondaries.begin(), p.wanted.secondaries.end(),
+                                   [&](const auto& s) { return s.name == w.name; });
     const bool holds = volts_off(*wish, 1 + *w.error_ratio) <= 1 + 1e-9;
     const bool heater = is_heater(*wish);
-    check c{heater ? "heater-turns" : "ht-volts", holds ? level::pass : level::stop,
+    check c{heater ? "heater-turns" : "ht-volts",
+            holds ? level::pass : level::stop,
             "volts of " + w.name + (wish->no_load ? " without load" : " on load"),
             shown((wish->no_load ? w.no_load : w.on_load).plain(), 4) + " (" + signed_percent(*w.error_ratio) + ")",
-            "within " + written(*w.tolerance) + " of what the job says", ""};
+            "within " + written(*w.tolerance) + " of what the job says",
+            ""};
     if (!holds) {
       c.cure = wish->fixed.n ? "let the turns of " + w.name + " be chosen; one turn is " + shown(w.one_turn, 3) : cure;
     }
@@ -64,9 +72,11 @@ void add_heaters_over_mains(const design& p, std::vector<check>& all) {
       }
     }
     const double follows = std::max(p.wanted.mains.over_ratio, p.wanted.mains.under_ratio) + tolerance_of(w).over;
-    const bool with_the_wall = std::abs(worst) <= follows * 1.02;  // the drop under load is a little larger at high mains
+    const bool with_the_wall =
+        std::abs(worst) <= follows * 1.02;  // the drop under load is a little larger at high mains
     all.push_back({"heater-volts", with_the_wall ? level::note : level::caution,
-                   w.name + " at the ends of the mains range: a heater follows the wall; makers' usual limits are 5 % for long life, 10 % at most (recalled)",
+                   w.name + " at the ends of the mains range: a heater follows the wall; makers' usual limits are 5 % "
+                            "for long life, 10 % at most (recalled)",
                    signed_percent(worst), "mains range and tolerance together: " + percent(follows),
                    with_the_wall ? "" : "a primary tap for the mains that is really there"});
   }
@@ -80,8 +90,10 @@ void add_other_positions(const design& p, std::vector<check>& all) {
       const volts wanted = w.second_half ? w.voltage + *w.second_half : w.voltage;
       const double ratio = plain(s.on_load[i].second.plain()) / plain(wanted);
       if (w.no_load || w.fixed.n || s.at == p.wanted.primary.on || volts_off(w, ratio) <= 1 + 1e-9) continue;
-      all.push_back({is_heater(w) ? "heater-turns" : "ht-volts", level::caution, "volts of " + w.name + " with the selector on " + written(s.at),
-                     shown(s.on_load[i].second.plain(), 4) + " (" + signed_percent(ratio - 1) + ")", "within " + written(tolerance_of(w)) + " of what the job says",
+      all.push_back({is_heater(w) ? "heater-turns" : "ht-volts", level::caution,
+                     "volts of " + w.name + " with the selector on " + written(s.at),
+                     shown(s.on_load[i].second.plain(), 4) + " (" + signed_percent(ratio - 1) + ")",
+                     "within " + written(tolerance_of(w)) + " of what the job says",
                      "a thicker primary, or plan for that position"});
     }
   }
@@ -89,18 +101,22 @@ void add_other_positions(const design& p, std::vector<check>& all) {
 
 void add_taps(const design& p, std::vector<check>& all) {
   if (p.settings.size() > 1) {
-    const auto worst = std::max_element(p.settings.begin(), p.settings.end(), [](const auto& a, const auto& b) { return a.density < b.density; });
+    const auto worst = std::max_element(p.settings.begin(), p.settings.end(),
+                                        [](const auto& a, const auto& b) { return a.density < b.density; });
     const amperes_per_square_metre most = p.wanted.limits.current_density.value_or(usual_highest_density);
     const bool holds = worst->density <= most;
-    all.push_back({"tap-wire", holds ? level::pass : level::caution, "current density of the primary at its worst position, " + written(worst->at),
-                   shown(worst->density), shown(most), holds ? "" : "a thicker wire below that tap, or two equal primaries"});
+    all.push_back({"tap-wire", holds ? level::pass : level::caution,
+                   "current density of the primary at its worst position, " + written(worst->at), shown(worst->density),
+                   shown(most), holds ? "" : "a thicker wire below that tap, or two equal primaries"});
   }
   for (const planned_winding& w : p.windings) {
     for (const planned_tap& t : w.taps) {
       const bool end = t.n == w.n && !w.tap_of;
       if (!t.mid_layer || end) continue;
-      all.push_back({"lead-exits", level::note, (t.at == "centre tap" ? "centre tap of " : "tap of ") + w.name + " at " + std::to_string(t.n.count()) + " turns lies inside layer " +
-                     std::to_string(t.layer), "mid-layer", "the end of a layer",
+      all.push_back({"lead-exits", level::note,
+                     (t.at == "centre tap" ? "centre tap of " : "tap of ") + w.name + " at " +
+                         std::to_string(t.n.count()) + " turns lies inside layer " + std::to_string(t.layer),
+                     "mid-layer", "the end of a layer",
                      "loop the wire out at the " + t.side + " side under its own sleeve; do not cut and joint it"});
     }
   }
@@ -112,9 +128,11 @@ void add_iron(const design& p, std::vector<check>& all) {
   all.push_back({"iron-identity", weak ? level::caution : level::note,
                  weak ? "iron of unknown or old grade: measure the no-load current before winding on it"
                       : "the plan holds for this grade; a core of unknown sheet wants a no-load test first",
-                 c.grade.name + ", " + std::string(word_of(c.grade.known_how)), "a grade known by its mark or by test", ""});
+                 c.grade.name + ", " + std::string(word_of(c.grade.known_how)), "a grade known by its mark or by test",
+                 ""});
   if (p.made.nominal.loss_beyond_curve) {
-    all.push_back({"iron-identity", level::note, "iron loss was read beyond the ends of the loss curve", shown(p.flux_on_load), "inside the curve", ""});
+    all.push_back({"iron-identity", level::note, "iron loss was read beyond the ends of the loss curve",
+                   shown(p.flux_on_load), "inside the curve", ""});
   }
 }
 
@@ -124,22 +142,28 @@ void add_insulation(const design& p, std::vector<check>& all) {
     const bool wrap_short = c.wrap_under < c.wrap_usual, margin_short = c.margin < c.margin_usual;
     if (floating) {
       all.push_back({"floating-heater", wrap_short || margin_short ? level::stop : level::note,
-                     c.role.name + " rides on " + *p.wanted.secondaries[c.role.which].floats_on + ": insulate it as that winding, on both sides",
-                     shown(c.to_core.dc.plain()) + " dc to the core; wrap " + shown(c.wrap_under, 2) + ", margin " + shown(c.margin, 2),
+                     c.role.name + " rides on " + *p.wanted.secondaries[c.role.which].floats_on +
+                         ": insulate it as that winding, on both sides",
+                     shown(c.to_core.dc.plain()) + " dc to the core; wrap " + shown(c.wrap_under, 2) + ", margin " +
+                         shown(c.margin, 2),
                      "wrap " + shown(c.wrap_usual, 2) + ", margin " + shown(c.margin_usual, 2) + " (practice)",
                      wrap_short || margin_short ? "leave wrap and margin to the plan" : ""});
     } else if (wrap_short || margin_short) {
-      all.push_back({"lead-exits", level::caution, "insulation that the job fixes for " + c.role.name + " is less than practice",
-                     "wrap " + shown(c.wrap_under, 2) + ", margin " + shown(c.margin, 2), "wrap " + shown(c.wrap_usual, 2) + ", margin " + shown(c.margin_usual, 2),
+      all.push_back({"lead-exits", level::caution,
+                     "insulation that the job fixes for " + c.role.name + " is less than practice",
+                     "wrap " + shown(c.wrap_under, 2) + ", margin " + shown(c.margin, 2),
+                     "wrap " + shown(c.wrap_usual, 2) + ", margin " + shown(c.margin_usual, 2),
                      "leave wrap and margin to the plan"});
     }
   }
   if (!p.wanted.screens.empty()) {
-    all.push_back({"closed-turn", level::note, "a screen's ends must overlap insulated, with one lead only: a bare lap is a shorted turn",
+    all.push_back({"closed-turn", level::note,
+                   "a screen's ends must overlap insulated, with one lead only: a bare lap is a shorted turn",
                    "foil of one turn", "at least 3 mm of insulated lap", ""});
   }
   if (p.wanted.primary.two_windings) {
-    all.push_back({"primary-phasing", level::note, "mark the starts: primaries linked in parallel the wrong way round are a short circuit",
+    all.push_back({"primary-phasing", level::note,
+                   "mark the starts: primaries linked in parallel the wrong way round are a short circuit",
                    "two equal primaries", "like ends proved before linking", ""});
   }
 }
@@ -150,8 +174,10 @@ void add_hot_spot(const design& p, std::vector<check>& all) {
   const double top = letter == 'A' ? 105 : letter == 'E' ? 120 : letter == 'B' ? 130 : letter == 'F' ? 155 : 180;
   const temperature bound = celsius(top - 5);
   const bool holds = p.heat_high.hot_spot <= bound;
-  all.push_back({"heat", holds ? level::pass : level::caution, std::string("hot spot at the highest mains, class ") + letter + " less 5 K",
-                 shown(p.heat_high.hot_spot), shown(bound), holds ? "" : "thicker wire, a larger stack, or insulation of a higher class throughout"});
+  all.push_back({"heat", holds ? level::pass : level::caution,
+                 std::string("hot spot at the highest mains, class ") + letter + " less 5 K",
+                 shown(p.heat_high.hot_spot), shown(bound),
+                 holds ? "" : "thicker wire, a larger stack, or insulation of a higher class throughout"});
 }
 
 void add_regulation(const design& p, std::vector<check>& all) {
@@ -181,10 +207,13 @@ std::vector<check> checks_of(const design& p, const std::string& cure) {
 
 std::vector<std::string> winding_cautions() {
   return {
-      "Mains and HT kill. Wiring and testing are for people trained to do it, under the local code and, where the law asks for it, a licence.",
-      "Before power: earth core, frame and screen; prove earth continuity; fit the fuse; insulate every free lead, unused taps too.",
+      "Mains and HT kill. Wiring and testing are for people trained to do it, under the local code and, where the law "
+      "asks for it, a licence.",
+      "Before power: earth core, frame and screen; prove earth continuity; fit the fuse; insulate every free lead, "
+      "unused taps too.",
       "First power through a series lamp or a slowly raised isolated supply; an open HT winding gives its full volts.",
-      "Insulation and test volts here are guidance from practice, partly recalled; compliance with a safety standard needs the standard "
+      "Insulation and test volts here are guidance from practice, partly recalled; compliance with a safety standard "
+      "needs the standard "
       "and a competent test house.",
   };
 }

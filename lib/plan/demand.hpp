@@ -45,13 +45,13 @@ struct primary_wish {
 
 struct secondary_wish {
   std::string name;
-  volts voltage;                        ///< of the whole winding, or of the first half of a centre-tapped one
-  std::optional<volts> second_half;     ///< present where the winding is written as halves, each with a load of its own
-  bool centre_tap = false;              ///< a tap in the middle of a winding loaded as a whole
-  bool no_load = false;                 ///< the volts are meant without load
+  volts voltage;                     ///< of the whole winding, or of the first half of a centre-tapped one
+  std::optional<volts> second_half;  ///< present where the winding is written as halves, each with a load of its own
+  bool centre_tap = false;           ///< a tap in the middle of a winding loaded as a whole
+  bool no_load = false;              ///< the volts are meant without load
   amperes_rms current;
   std::optional<std::string> floats_on;
-  std::optional<std::string> tap_of;    ///< a tap of another winding's first half, with a load of its own
+  std::optional<std::string> tap_of;  ///< a tap of another winding's first half, with a load of its own
   winding_wishes fixed;
 };
 
@@ -109,7 +109,7 @@ struct demand {
   limits_wish limits;
   aim goal = aim::cost;
   prices_wish prices;
-  bool prices_given = false;  ///< at least one of them
+  bool prices_given = false;          ///< at least one of them
   std::vector<std::string> accepted;  ///< codes of stops that the user goes on past
   std::vector<assumption> assumed;
 };

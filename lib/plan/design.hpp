@@ -11,10 +11,10 @@
 namespace turnwright {
 
 struct planned_tap {
-  std::string at;     ///< "220 V", "centre tap"
-  turns n;            ///< from the start of the winding it is a tap of
+  std::string at;  ///< "220 V", "centre tap"
+  turns n;         ///< from the start of the winding it is a tap of
   int layer = 0;
-  std::string side;   ///< "start" or "far": the end of the coil it comes out at
+  std::string side;  ///< "start" or "far": the end of the coil it comes out at
   bool mid_layer = false;
 };
 
@@ -28,22 +28,22 @@ struct planned_half {
 struct planned_section {
   turns from, to;
   wire_pick wire;
-  metres length;      ///< one strand
-  kilograms mass;     ///< all strands
+  metres length;   ///< one strand
+  kilograms mass;  ///< all strands
 };
 
 struct planned_winding {
   std::string name;
-  std::optional<screen_kind> screen;       ///< a screen: only name, build and wrap apply
+  std::optional<screen_kind> screen;  ///< a screen: only name, build and wrap apply
   std::optional<std::string> tap_of;
   bool primary = false;
   turns n;
   std::vector<planned_tap> taps;
   std::vector<planned_half> halves;
-  std::vector<planned_section> sections;   ///< where the wire changes; else one
+  std::vector<planned_section> sections;  ///< where the wire changes; else one
   int layers = 0;
   turns per_layer, last_layer;
-  std::string finish_side;                 ///< where the last turn comes out
+  std::string finish_side;                                          ///< where the last turn comes out
   metres margin, interlayer, build, wrap_under, mean_turn, length;  ///< of a screen: foil and what it lies on
   std::string margin_why, interlayer_why, wrap_why;
   kilograms mass;
@@ -56,17 +56,17 @@ struct planned_winding {
   std::optional<double> regulation_ratio;  ///< secondaries
   std::optional<double> error_ratio;       ///< volts found over wanted, less one
   std::optional<volts_tolerance> tolerance;
-  kelvins rise;                            ///< high mains
-  temperature hot_spot;                    ///< high mains
+  kelvins rise;          ///< high mains
+  temperature hot_spot;  ///< high mains
   volts one_turn;
 };
 
 struct planned_pair {
   std::string a, b;
-  volts_rms working;             ///< of alternating and direct part together
+  volts_rms working;  ///< of alternating and direct part together
   volts_peak peak;
   std::optional<volts_dc> dc;
-  std::optional<metres> wrap;    ///< insulation between, foil not counted; absent where air or the cheek is the path
+  std::optional<metres> wrap;  ///< insulation between, foil not counted; absent where air or the cheek is the path
   volts_rms test;
 };
 
@@ -86,7 +86,7 @@ struct planned_state {
 };
 
 struct planned_heat {
-  volts position;       ///< of the mains selector
+  volts position;  ///< of the mains selector
   temperature ambient;
   kelvins winding_rise, core_rise;
   temperature hot_spot;
@@ -94,7 +94,7 @@ struct planned_heat {
 
 struct planned_leakage {
   std::string a, b;
-  henries inductance;   ///< referred to a
+  henries inductance;  ///< referred to a
   std::string method;
 };
 
@@ -108,8 +108,8 @@ struct planned_test {
 
 struct material {
   std::string what;
-  std::optional<metres> length;    ///< wire, all strands one after the other, with waste
-  std::optional<kilograms> mass;   ///< with waste
+  std::optional<metres> length;   ///< wire, all strands one after the other, with waste
+  std::optional<kilograms> mass;  ///< with waste
   std::optional<int> count;
 };
 
@@ -124,15 +124,15 @@ struct design {
   std::vector<planned_pair> pairs;
   std::vector<planned_setting> settings;
   std::vector<planned_state> states;
-  no_load_state idle;                     ///< secondaries open, nominal mains
+  no_load_state idle;  ///< secondaries open, nominal mains
   teslas flux_nominal, flux_on_load, flux_high;
   planned_heat heat_high, heat_nominal;
-  kelvins surface_rule;                   ///< cross-check of the rise at high mains
+  kelvins surface_rule;  ///< cross-check of the rise at high mains
   std::vector<planned_leakage> leakage;
   std::vector<planned_test> tests;
   std::vector<material> materials;
   kilograms mass;
-  std::optional<double> cost;             ///< in the currency of the job's prices
+  std::optional<double> cost;  ///< in the currency of the job's prices
   std::vector<check> checks;
   std::vector<assumption> assumed;
   std::vector<std::string> cautions;

@@ -42,7 +42,8 @@ wrap usual_wrap(const demand& d, const coil_role* under, const coil_role& over, 
   if (!under) return {wraps::over_former, "over the former"};
   if (floats(d, *under) || floats(d, over)) return {wraps::floating_heater, "beside a heater that rides on the HT"};
   if (screen) return {wraps::beside_screen, "beside a screen"};
-  if (under->primary != over.primary) return {wraps::ordinary, "primary to secondary: three layers, any two of which pass the test"};
+  if (under->primary != over.primary)
+    return {wraps::ordinary, "primary to secondary: three layers, any two of which pass the test"};
   return {wraps::ordinary, "three layers of paper"};
 }
 
@@ -66,8 +67,8 @@ std::vector<turns> sections_of(const demand& d, const turn_set& n, const coil_ro
 
 int film_number(const std::string& grade) { return grade == "1" || grade == "single" ? 1 : grade == "3" ? 3 : 2; }
 
-// Without paper the enamel alone stands between layers: up to 25 V r.m.s., and up to a fortieth of what new wire of that
-// film breaks down at (judgement).
+// Without paper the enamel alone stands between layers: up to 25 V r.m.s., and up to a fortieth of what new wire of
+// that film breaks down at (judgement).
 bool enamel_is_enough(const shop& s, const wire_pick& w, volts_rms between_layers) {
   const auto breakdown = s.insulation.enamel_breakdown(w.wire.bare, film_number(w.grade));
   const double enamel_v = breakdown ? plain(breakdown->plain()) / 40 : 0;
@@ -84,8 +85,9 @@ void choose_insulation(const demand& d, const shop& s, const draft& f, coil_draf
   c.margin = d.insulation.margin.value_or(usual.value);
   c.margin_why = d.insulation.margin ? "as the job says" : usual.why;
   // Volts from layer to layer at the open end, no load, highest mains.
-  const block trial{turns{1}, thickest.wire, thickest.overall, thickest.strands, usual_lay(f.room.kind, thickest.overall),
-                    c.margin, 0_mm, std::nullopt};
+  const block trial{
+      turns{1}, thickest.wire, thickest.overall, thickest.strands, usual_lay(f.room.kind, thickest.overall),
+      c.margin, 0_mm,          std::nullopt};
   const double per_turn = highest_mains(d) / turns_in_use(nominal_position(d.primary), f.n.primary).count();
   const int full = std::min(turns_per_layer(trial, f.shape.width).count(), turns_of(d, f.n, c.role).count());
   const volts_rms between_layers{as<volts>(2 * per_turn * full)};
@@ -125,12 +127,15 @@ turns turns_of(const demand& d, const turn_set& n, const coil_role& role) {
   return d.secondaries[role.which].second_half ? s.first + s.second : s.first;
 }
 
-volts_rms rms_of(const potential& p) { return volts_rms{as<volts>(std::hypot(plain(p.ac.plain()), plain(p.dc.plain())))}; }
+volts_rms rms_of(const potential& p) {
+  return volts_rms{as<volts>(std::hypot(plain(p.ac.plain()), plain(p.dc.plain())))};
+}
 
 volts_peak peak_of(const potential& p) { return volts_peak{p.dc.plain() + peak_of_sine(p.ac).plain()}; }
 
 potential between(const potential& a, const potential& b) {
-  return {volts_rms{a.ac.plain() + b.ac.plain()}, volts_dc{as<volts>(std::abs(plain(a.dc.plain()) - plain(b.dc.plain())))}};
+  return {volts_rms{a.ac.plain() + b.ac.plain()},
+          volts_dc{as<volts>(std::abs(plain(a.dc.plain()) - plain(b.dc.plain())))}};
 }
 
 metres foil_of(screen_kind k) { return k == screen_kind::safety ? wraps::safety_screen_foil : wraps::screen_foil; }
@@ -144,15 +149,18 @@ amperes_per_square_metre density_in(const coil_draft& c, amperes current, turns 
   turns from{0};
   for (std::size_t k = 0; k < c.laid.blocks.size(); ++k) {
     const wire_pick& w = c.wires[k];
-    if (from < in_use) worst = std::max(worst, amperes_per_square_metre(current / (bare_area(w.wire) * static_cast<double>(w.strands))));
+    if (from < in_use)
+      worst = std::max(worst, amperes_per_square_metre(current / (bare_area(w.wire) * static_cast<double>(w.strands))));
     from = from + c.laid.blocks[k].of.n;
   }
   return worst;
 }
 
 potential working_volts(const demand& d, const turn_set& n, const coil_role& role) {
-  const double highest = highest_mains(d), per_turn = highest / turns_in_use(nominal_position(d.primary), n.primary).count();
-  if (role.primary) return {volts_rms{selector_positions(d.primary).back().at * (1 + d.mains.over_ratio)}, volts_dc{0_V}};
+  const double highest = highest_mains(d),
+               per_turn = highest / turns_in_use(nominal_position(d.primary), n.primary).count();
+  if (role.primary)
+    return {volts_rms{selector_positions(d.primary).back().at * (1 + d.mains.over_ratio)}, volts_dc{0_V}};
   const secondary_wish& wish = d.secondaries[role.which];
   const secondary_turns& s = n.secondaries[role.which];
   potential p{volts_rms{as<volts>(per_turn * std::max(s.first, s.second).count())}, volts_dc{0_V}};
@@ -182,7 +190,8 @@ draft lay_out(const demand& d, const shop& s, const core_body& core, const turn_
     const std::vector<turns> parts = sections_of(d, n, c.role, c.wires.size());
     for (std::size_t k = 0; k < parts.size(); ++k) {
       const wire_pick& p = c.wires[k];
-      blocks.push_back({parts[k], p.wire, p.overall, p.strands, usual_lay(room.kind, p.overall), c.margin, c.interlayer, std::nullopt});
+      blocks.push_back({parts[k], p.wire, p.overall, p.strands, usual_lay(room.kind, p.overall), c.margin, c.interlayer,
+                        std::nullopt});
     }
     c.laid = lay(blocks, at + gap_under(c), f.shape);
     for (const laid_block& b : c.laid.blocks) f.too_wide = f.too_wide || b.too_wide;

@@ -46,7 +46,8 @@ std::vector<coil_role> coils_of(const demand& d);
 /// Wires of every coil of `coils_of`: one, or one for each tap section of a primary.
 using wire_set = std::vector<std::vector<wire_pick>>;
 
-/// Highest volts of a winding against the core: no load, highest mains. A winding that floats on another has direct volts.
+/// Highest volts of a winding against the core: no load, highest mains. A winding that floats on another has direct
+/// volts.
 struct potential {
   volts_rms ac;
   volts_dc dc;
@@ -62,13 +63,13 @@ struct coil_draft {
   coil_role role;
   std::vector<wire_pick> wires;
   laid_winding laid;
-  metres wrap_under;            ///< insulation that the winding lies on
+  metres wrap_under;  ///< insulation that the winding lies on
   std::string wrap_why;
-  metres wrap_usual;            ///< what practice asks for there, where the job fixes the wrap
+  metres wrap_usual;  ///< what practice asks for there, where the job fixes the wrap
   std::optional<screen_kind> screen_under;
-  metres wrap_under_screen;     ///< insulation that the screen lies on; nothing where there is none
+  metres wrap_under_screen;  ///< insulation that the screen lies on; nothing where there is none
   metres margin, interlayer;
-  metres margin_usual;          ///< what gauge and volts ask for, where the job fixes the margin
+  metres margin_usual;  ///< what gauge and volts ask for, where the job fixes the margin
   std::string margin_why, interlayer_why;
   potential to_core;
 };
@@ -87,13 +88,14 @@ struct draft {
   turn_set n;
   std::vector<coil_draft> coils;
   std::optional<screen_kind> screen_outside;
-  metres used;       ///< of the winding height, bulge included
-  double fill = 0;   ///< used over height
+  metres used;      ///< of the winding height, bulge included
+  double fill = 0;  ///< used over height
   bool too_wide = false;
 };
 
-/// Highest volts of a coil against the core: no load, highest mains. A winding written as halves has those of its larger
-/// half; one that floats on another rides on the direct volts of that one behind a rectifier, which are its peak.
+/// Highest volts of a coil against the core: no load, highest mains. A winding written as halves has those of its
+/// larger half; one that floats on another rides on the direct volts of that one behind a rectifier, which are its
+/// peak.
 potential working_volts(const demand& d, const turn_set& n, const coil_role& role);
 
 /// Lays out a coil. Wires have to match `coils_of(d)`.

@@ -21,12 +21,14 @@ double quotient(volts_rms a, volts_rms b) { return plain(a.plain()) / plain(b.pl
 
 class assembly {
  public:
-  assembly(const demand& d, const shop& s, attempt a) : d_(d), s_(s), out_(d, std::move(a)), ports_(ports_of(d, out_.made.coil)) {}
+  assembly(const demand& d, const shop& s, attempt a)
+      : d_(d), s_(s), out_(d, std::move(a)), ports_(ports_of(d, out_.made.coil)) {}
 
   design finish() {
     out_.turns_per_volt = turns_in_use(at(), coil().n.primary).count() / plain(d_.primary.on);
     for (std::size_t i = 0; i < coil().coils.size(); ++i) {
-      if (coil().coils[i].screen_under) out_.windings.push_back(screen(*coil().coils[i].screen_under, coil().coils[i].wrap_under_screen));
+      if (coil().coils[i].screen_under)
+        out_.windings.push_back(screen(*coil().coils[i].screen_under, coil().coils[i].wrap_under_screen));
       out_.windings.push_back(winding(i));
       add_taps_of(i);
     }
@@ -81,7 +83,8 @@ class assembly {
     for (const laid_block& b : c.laid.blocks) {
       const wire_pick& wire = c.wires[w.sections.size()];
       const metres length = wire_length(c.laid, done, done + b.of.n);
-      w.sections.push_back({done, done + b.of.n, wire, length, length * mass_per_metre(wire.wire) * static_cast<double>(wire.strands)});
+      w.sections.push_back(
+          {done, done + b.of.n, wire, length, length * mass_per_metre(wire.wire) * static_cast<double>(wire.strands)});
       done = done + b.of.n;
     }
     w.resistance_20 = resistance_20(c.laid, turns{0}, w.n);
@@ -101,15 +104,18 @@ class assembly {
     const bool second = c.role.which == 1;
     for (std::size_t k = 0; k < d_.primary.taps.size(); ++k) {
       const turn_place p = place_of(c.laid, coil().n.primary[k]);
-      w.taps.push_back({written(d_.primary.taps[k]), coil().n.primary[k], p.layer, side_word(p.at_start_side), !p.layer_end});
+      w.taps.push_back(
+          {written(d_.primary.taps[k]), coil().n.primary[k], p.layer, side_word(p.at_start_side), !p.layer_end});
     }
     const double in_use = turns_in_use(at(), coil().n.primary).count();
     const turns own = coil().n.primary[second ? *at().tap_b : at().tap_a];
     const volts terminal = nominal().electric.terminal.plain() * (own.count() / in_use);
     w.one_turn = nominal().electric.emf.plain() / in_use;
     w.no_load = volts_rms{at().at * (w.n.count() / in_use)};
-    w.on_load = volts_rms{terminal + static_cast<double>((w.n - own).count()) * w.one_turn};  // beyond the tap in use no current flows
-    w.current = amperes_rms{nominal().electric.primary_current.plain() * (second ? nominal().share.b : nominal().share.a)};
+    w.on_load = volts_rms{terminal + static_cast<double>((w.n - own).count()) *
+                                         w.one_turn};  // beyond the tap in use no current flows
+    w.current =
+        amperes_rms{nominal().electric.primary_current.plain() * (second ? nominal().share.b : nominal().share.a)};
     w.density = density_in(c, w.current.plain(), own);
     w.apparent = apparent_power(volts_rms{terminal}, w.current);
   }
@@ -162,7 +168,8 @@ class assembly {
     const double hot = copper::over_20(nominal().copper[i]);
     const auto half = [&](turns from, turns to, const supply::port_state& s, double share) {
       const ohms r = resistance_20(laid, from, to);
-      w.halves.push_back({to - from, volts_rms{s.no_load.plain() * share}, volts_rms{s.on_load.plain() * share}, s.current, r, r * hot});
+      w.halves.push_back({to - from, volts_rms{s.no_load.plain() * share}, volts_rms{s.on_load.plain() * share},
+                          s.current, r, r * hot});
     };
     for (std::size_t k = 0; k < ports_.size(); ++k) {
       if (ports_[k].coil != i || ports_[k].inside) continue;
@@ -237,14 +244,20 @@ class assembly {
     const coil_size size = outside_of(coil());
     const lamination& l = coil().core.choice().pattern;
     const square_metres ends = 2.0 * (size.across + 2.0 * coil().used) * l.window_length;
-    out_.surface_rule = thermal::surface_rule(out_.made.high.copper_loss + out_.made.high.core_loss, coil().core.exposed_surface() + ends);
+    out_.surface_rule = thermal::surface_rule(out_.made.high.copper_loss + out_.made.high.core_loss,
+                                              coil().core.exposed_surface() + ends);
   }
 
   void add_settings() {
     for (const selector_position& p : selector_positions(d_.primary)) {
       const running r = run_at(d_, coil(), p, 1.0, nominal().copper);
-      planned_setting s{p.at, links_of(p, d_.primary), turns_in_use(p, coil().n.primary), r.electric.primary_current,
-                        as<amperes_per_square_metre>(0), flux_at(d_, coil().core, coil().n.primary, p, 1.0), on_load(r)};
+      planned_setting s{p.at,
+                        links_of(p, d_.primary),
+                        turns_in_use(p, coil().n.primary),
+                        r.electric.primary_current,
+                        as<amperes_per_square_metre>(0),
+                        flux_at(d_, coil().core, coil().n.primary, p, 1.0),
+                        on_load(r)};
       for (const coil_draft& c : coil().coils) {
         if (!c.role.primary) continue;
         const bool second = c.role.which == 1;

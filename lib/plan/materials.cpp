@@ -18,12 +18,13 @@ std::vector<material> materials_of(const design& p) {
   for (const planned_winding& w : p.windings) {
     if (w.screen || w.tap_of) continue;
     for (const planned_section& s : w.sections) {
-      all.push_back({"wire " + s.wire.wire.size + " for " + w.name, s.length * wire_waste * static_cast<double>(s.wire.strands),
-                     s.mass * wire_waste, std::nullopt});
+      all.push_back({"wire " + s.wire.wire.size + " for " + w.name,
+                     s.length * wire_waste * static_cast<double>(s.wire.strands), s.mass * wire_waste, std::nullopt});
     }
   }
   const core_body& core = p.made.coil.core;
-  all.push_back({core.choice().grade.name + " sheets " + core.choice().pattern.name, std::nullopt, core.mass(), core.sheets()});
+  all.push_back(
+      {core.choice().grade.name + " sheets " + core.choice().pattern.name, std::nullopt, core.mass(), core.sheets()});
   return all;
 }
 

@@ -28,7 +28,8 @@ bool offered(const demand& d, const lamination& l) {
 }
 
 // The wanted patterns in the wanted stack, else in each of their usual ones; lightest first.
-std::vector<core_body> cores_where(const demand& d, const shop& s, const std::function<bool(const lamination&)>& wanted) {
+std::vector<core_body> cores_where(const demand& d, const shop& s,
+                                   const std::function<bool(const lamination&)>& wanted) {
   const steel& grade = grade_of(d, s);
   std::vector<core_body> all;
   for (const lamination& l : s.patterns.all()) {
@@ -66,12 +67,18 @@ attempt wind_either_way(const demand& d, const shop& s, const core_body& core, s
 double merit(const demand& d, const attempt& a) {
   const core_choice& c = a.coil.core.choice();
   switch (d.goal) {
-    case aim::cost: return cost_of(d, a.coil);
-    case aim::mass: return plain(total_mass(a.coil));
-    case aim::loss: return plain(a.nominal.copper_loss + a.nominal.core_loss);
-    case aim::volume: return plain(c.pattern.width) * plain(c.pattern.height) * plain(c.stack + 2.0 * (a.coil.room.wall + a.coil.used));
-    case aim::height: return plain(c.pattern.height) + 1e-3 * plain(total_mass(a.coil));
-    case aim::regulation: return worst_regulation(a.nominal);
+    case aim::cost:
+      return cost_of(d, a.coil);
+    case aim::mass:
+      return plain(total_mass(a.coil));
+    case aim::loss:
+      return plain(a.nominal.copper_loss + a.nominal.core_loss);
+    case aim::volume:
+      return plain(c.pattern.width) * plain(c.pattern.height) * plain(c.stack + 2.0 * (a.coil.room.wall + a.coil.used));
+    case aim::height:
+      return plain(c.pattern.height) + 1e-3 * plain(total_mass(a.coil));
+    case aim::regulation:
+      return worst_regulation(a.nominal);
   }
   return 0;
 }
@@ -149,7 +156,8 @@ std::optional<std::string> cure_by_turns(const demand& d, const shop& s, const c
   if (!a.windable()) return std::nullopt;
   std::string text = "other turns:";
   for (const coil_draft& c : a.coil.coils) {
-    text += (&c == &a.coil.coils.front() ? " " : ", ") + c.role.name + " " + std::to_string(total_turns(c.laid).count());
+    text +=
+        (&c == &a.coil.coils.front() ? " " : ", ") + c.role.name + " " + std::to_string(total_turns(c.laid).count());
   }
   return text;
 }
@@ -183,7 +191,8 @@ std::optional<std::string> cure_by_flux(const demand& d, const shop& s, const co
     demand more = d;
     more.limits.flux_density = b;
     more.limits.flux_density_high.reset();
-    if (wind_either_way(more, s, core, unused).windable()) return "a flux density of " + shown(b) + " instead of " + shown(now);
+    if (wind_either_way(more, s, core, unused).windable())
+      return "a flux density of " + shown(b) + " instead of " + shown(now);
   }
   return std::nullopt;
 }
@@ -197,11 +206,13 @@ std::optional<std::string> cure_by_core(const demand& d, const shop& s, const co
   const auto turn = [&](const core_body& c) {
     return (c.choice().pattern.family == core.choice().pattern.family ? 0 : 2) + (c.mass() > core.mass() ? 0 : 1);
   };
-  std::stable_sort(others.begin(), others.end(), [&](const core_body& a, const core_body& b) { return turn(a) < turn(b); });
+  std::stable_sort(others.begin(), others.end(),
+                   [&](const core_body& a, const core_body& b) { return turn(a) < turn(b); });
   std::vector<working> unused;
   for (const core_body& other : others) {
     if (hopelessly_small(d, s, other)) continue;
-    if (wind(open, s, other, false, unused).windable()) return (other.mass() > core.mass() ? "the next core: " : "another core: ") + named(other);
+    if (wind(open, s, other, false, unused).windable())
+      return (other.mass() > core.mass() ? "the next core: " : "another core: ") + named(other);
   }
   return std::nullopt;
 }
@@ -209,12 +220,14 @@ std::optional<std::string> cure_by_core(const demand& d, const shop& s, const co
 // The smallest change that clears everything, tried in the order wire, turns that are fixed, stack, flux, next core.
 std::string cure_for(const demand& d, const shop& s, const core_body& core) {
   const std::vector<std::function<std::optional<std::string>()>> ways{
-      [&] { return cure_by_wire(d, s, core); }, [&] { return cure_by_turns(d, s, core); }, [&] { return cure_by_stack(d, s, core); },
-      [&] { return cure_by_flux(d, s, core); }, [&] { return cure_by_core(d, s, core); }};
+      [&] { return cure_by_wire(d, s, core); }, [&] { return cure_by_turns(d, s, core); },
+      [&] { return cure_by_stack(d, s, core); }, [&] { return cure_by_flux(d, s, core); },
+      [&] { return cure_by_core(d, s, core); }};
   for (const auto& way : ways) {
     if (const auto cure = way()) return *cure;
   }
-  return "nothing that was tried clears it: wire, turns, stack, flux, and every core of the tables in this steel; relax a limit or what is fixed";
+  return "nothing that was tried clears it: wire, turns, stack, flux, and every core of the tables in this steel; "
+         "relax a limit or what is fixed";
 }
 
 }  // namespace
@@ -233,20 +246,28 @@ void add_choices(const demand& d, design& p) {
   const auto assume = [&](bool open, std::string path, std::string value, std::string why) {
     if (open) p.assumed.push_back({std::move(path), std::move(value), std::move(why)});
   };
-  assume(!d.core.lamination, "/core/lamination", c.pattern.name, std::string("chosen by the aim from the ") + (d.wire.system == wire_system::awg ? "inch" : "metric") + " E-I patterns that meet every limit with room to spare");
+  assume(!d.core.lamination, "/core/lamination", c.pattern.name,
+         std::string("chosen by the aim from the ") + (d.wire.system == wire_system::awg ? "inch" : "metric") +
+             " E-I patterns that meet every limit with room to spare");
   assume(!d.core.stack, "/core/stack", shown(c.stack, 4), "chosen by the aim among the usual stacks");
-  assume(!d.core.stacking_factor, "/core/stacking_factor", written(ratio{c.stacking_factor}), "a stack laid by hand, by sheet (memory)");
-  assume(!d.limits.flux_density, "/limits/flux_density", written(p.made.flux.nominal), "quiet working peak of " + c.grade.name + " (memory)");
-  assume(!d.limits.flux_density_high, "/limits/flux_density_high", written(p.made.flux.high), "just under the knee of " + c.grade.name);
+  assume(!d.core.stacking_factor, "/core/stacking_factor", written(ratio{c.stacking_factor}),
+         "a stack laid by hand, by sheet (memory)");
+  assume(!d.limits.flux_density, "/limits/flux_density", written(p.made.flux.nominal),
+         "quiet working peak of " + c.grade.name + " (memory)");
+  assume(!d.limits.flux_density_high, "/limits/flux_density_high", written(p.made.flux.high),
+         "just under the knee of " + c.grade.name);
   assume(!d.former.wall, "/former/wall", shown(p.made.coil.room.wall, 3), "practice");
   assume(d.screens.empty(), "/screens", "none", "the job asks for none");
   const draft& f = p.made.coil;
-  assume(true, "bulge", fixed(f.shape.bulge, 2), std::string("of a coil wound by ") + (d.by_hand ? "hand" : "machine") + " (judgement)");
+  assume(true, "bulge", fixed(f.shape.bulge, 2),
+         std::string("of a coil wound by ") + (d.by_hand ? "hand" : "machine") + " (judgement)");
   assume(true, "clearance", shown(f.room.clearance, 2), "from coil to outer limb (practice)");
   assume(true, "outer wrap", shown(wraps::outer, 2), "abrasion and label (practice)");
-  assume(true, "lay", f.room.kind == former_kind::layers ? "90 %, 87 % over 1 mm" : "95 %, 93 % over 0.4 mm, 87 % over 1 mm",
+  assume(true, "lay",
+         f.room.kind == former_kind::layers ? "90 %, 87 % over 1 mm" : "95 %, 93 % over 0.4 mm, 87 % over 1 mm",
          "part of the width that turns fill (practice)");
-  assume(true, "building factor", fixed(f.core.building_factor(), 2), "loss of the stacked core over that of the sheet (memory)");
+  assume(true, "building factor", fixed(f.core.building_factor(), 2),
+         "loss of the stacked core over that of the sheet (memory)");
   assume(true, "joint gap", shown(f.core.joint_gap(), 2), "equivalent gap of the joints in the loop (memory)");
 }
 
@@ -263,7 +284,8 @@ design plan(const demand& d, const shop& s) {
   out.checks = checks_of(out, stands ? "" : cure_for(d, s, core));
   // Only what really stands in the way counts as gone past.
   std::erase_if(out.wanted.accepted, [&](const std::string& code) {
-    return std::none_of(out.checks.begin(), out.checks.end(), [&](const check& c) { return c.weight == level::stop && c.code == code; });
+    return std::none_of(out.checks.begin(), out.checks.end(),
+                        [&](const check& c) { return c.weight == level::stop && c.code == code; });
   });
   out.windable = std::none_of(out.checks.begin(), out.checks.end(), [&](const check& c) {
     return c.weight == level::stop && std::find(d.accepted.begin(), d.accepted.end(), c.code) == d.accepted.end();

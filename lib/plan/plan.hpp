@@ -32,8 +32,8 @@ std::vector<material> materials_of(const design& p);
 /// What to measure on the finished piece.
 std::vector<planned_test> tests_of(const design& p);
 
-/// The checks of a plan, each with what was found, its bound and a cure. `cure` is the smallest change that was tried and
-/// clears what stands in the way; empty where nothing does.
+/// The checks of a plan, each with what was found, its bound and a cure. `cure` is the smallest change that was tried
+/// and clears what stands in the way; empty where nothing does.
 std::vector<check> checks_of(const design& d, const std::string& cure);
 
 /// Name of the steel used where the job is silent.

@@ -62,7 +62,8 @@ fixed_parts prepare(const demand& d, const draft& f, const selector_position& at
   p.net.leakage = leakage_matrix(f, at, p.ports);
   for (const port_place& place : p.ports) {
     p.port_20.push_back(resistance_20(f.coils[place.coil].laid, place.from, place.to));
-    p.net.ports.push_back({place.to - place.from, p.port_20.back(), load_of(d.secondaries[place.secondary], place.half), place.inside});
+    p.net.ports.push_back(
+        {place.to - place.from, p.port_20.back(), load_of(d.secondaries[place.secondary], place.half), place.inside});
   }
   return p;
 }
@@ -71,7 +72,12 @@ fixed_parts prepare(const demand& d, const draft& f, const selector_position& at
 class settling {
  public:
   settling(const demand& d, const draft& f, running& r)
-      : d_(d), f_(f), r_(r), parts_(prepare(d, f, r.at, r.mains_ratio)), solver_(parts_.net), emf_(parts_.net.mains.plain()) {
+      : d_(d),
+        f_(f),
+        r_(r),
+        parts_(prepare(d, f, r.at, r.mains_ratio)),
+        solver_(parts_.net),
+        emf_(parts_.net.mains.plain()) {
     a_ = coil_index(f, true, 0);
     if (r.at.tap_b) b_ = coil_index(f, true, 1);
   }
@@ -84,7 +90,8 @@ class settling {
     std::vector<ohms> ports;
     for (std::size_t k = 0; k < parts_.ports.size(); ++k) ports.push_back(hot(parts_.ports[k].coil, parts_.port_20[k]));
     solver_.set_resistances(r_.share.resistance, ports);
-    r_.flux_density = peak_flux_density(volts_rms{emf_}, d_.mains.frequency, parts_.net.primary_turns, f_.core.net_area());
+    r_.flux_density =
+        peak_flux_density(volts_rms{emf_}, d_.mains.frequency, parts_.net.primary_turns, f_.core.net_area());
     r_.magnetising = f_.core.magnetising_current(r_.flux_density, parts_.net.primary_turns);
     solver_.set_shunt(emf_ * emf_ / f_.core.loss(r_.flux_density, d_.mains.frequency), emf_ / r_.magnetising.plain());
     solver_.solve();
@@ -122,8 +129,12 @@ class settling {
 };
 
 // Conductivities of layer windings, unimpregnated with imperfect contact (judgement): fine wire with much paper low.
-watts_per_metre_kelvin radial_conductivity(const coil_draft& c) { return c.wires.front().wire.bare < 0.6_mm ? 0.16_W_per_mK : 0.22_W_per_mK; }
-watts_per_metre_kelvin axial_conductivity(const coil_draft& c) { return c.wires.front().wire.bare < 0.6_mm ? 0.20_W_per_mK : 0.30_W_per_mK; }
+watts_per_metre_kelvin radial_conductivity(const coil_draft& c) {
+  return c.wires.front().wire.bare < 0.6_mm ? 0.16_W_per_mK : 0.22_W_per_mK;
+}
+watts_per_metre_kelvin axial_conductivity(const coil_draft& c) {
+  return c.wires.front().wire.bare < 0.6_mm ? 0.20_W_per_mK : 0.30_W_per_mK;
+}
 
 thermal::heated_coil heated(const demand& d, const draft& f) {
   const lamination& l = f.core.choice().pattern;
@@ -141,8 +152,8 @@ thermal::heated_coil heated(const demand& d, const draft& f) {
   for (const coil_draft& c : f.coils) {
     const stray_piece span = span_of(f, c, turns{0}, total_turns(c.laid));
     // The former sits loosely: what lies on it is that much further out than the drawing says.
-    h.windings.push_back({span.inner + h.former_air, span.outer + h.former_air, height_of(f, c), f.room.cheek + c.margin,
-                          radial_conductivity(c), axial_conductivity(c)});
+    h.windings.push_back({span.inner + h.former_air, span.outer + h.former_air, height_of(f, c),
+                          f.room.cheek + c.margin, radial_conductivity(c), axial_conductivity(c)});
   }
   return h;
 }
@@ -191,7 +202,8 @@ std::vector<henries> leakage_matrix(const draft& f, const selector_position& at,
   return leakage_against_first(coils, stray_space_of(f), turns_in_use(at, f.n.primary));
 }
 
-running run_at(const demand& d, const draft& f, const selector_position& at, double mains_ratio, const std::vector<temperature>& copper) {
+running run_at(const demand& d, const draft& f, const selector_position& at, double mains_ratio,
+               const std::vector<temperature>& copper) {
   running r;
   r.at = at;
   r.mains_ratio = mains_ratio;

@@ -20,7 +20,8 @@ bool is_primary_name(std::string_view name) { return name == "primary" || name =
 std::vector<selector_position> selector_positions(const primary_wish& p) {
   std::vector<selector_position> all;
   const auto add = [&](const selector_position& s) {
-    const bool there = std::any_of(all.begin(), all.end(), [&](const selector_position& o) { return same(o.at, s.at); });
+    const bool there =
+        std::any_of(all.begin(), all.end(), [&](const selector_position& o) { return same(o.at, s.at); });
     if (!there) all.push_back(s);
   };
   for (std::size_t i = 0; i < p.taps.size(); ++i) {

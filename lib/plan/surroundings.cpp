@@ -6,13 +6,20 @@
 namespace turnwright {
 namespace {
 
-std::optional<volts_dc> dc_in(const potential& p) { return plain(p.dc.plain()) > 0 ? std::optional(p.dc) : std::nullopt; }
+std::optional<volts_dc> dc_in(const potential& p) {
+  return plain(p.dc.plain()) > 0 ? std::optional(p.dc) : std::nullopt;
+}
 
 // The test follows the peak: a winding at direct volts is tested like one whose sine has that peak.
-planned_pair pair_of(std::string a, std::string b, const potential& volts_between, std::optional<metres> wrap, bool mains_to_secondary,
-                     const insulation_book& book) {
+planned_pair pair_of(std::string a, std::string b, const potential& volts_between, std::optional<metres> wrap,
+                     bool mains_to_secondary, const insulation_book& book) {
   const volts_rms by_peak{peak_of(volts_between).plain() / std::numbers::sqrt2};
-  return {std::move(a), std::move(b), rms_of(volts_between), peak_of(volts_between), dc_in(volts_between), wrap,
+  return {std::move(a),
+          std::move(b),
+          rms_of(volts_between),
+          peak_of(volts_between),
+          dc_in(volts_between),
+          wrap,
           mains_to_secondary ? book.test_reinforced(by_peak) : book.test_basic(by_peak)};
 }
 
@@ -34,7 +41,8 @@ std::vector<planned_pair> pairs_of(const draft& f, const insulation_book& book) 
   }
   for (const coil_draft& c : f.coils) {
     const bool innermost = &c == &f.coils.front();
-    all.push_back(pair_of(c.role.name, "core", c.to_core, innermost ? std::optional(f.room.wall + c.wrap_under) : std::nullopt, false, book));
+    all.push_back(pair_of(c.role.name, "core", c.to_core,
+                          innermost ? std::optional(f.room.wall + c.wrap_under) : std::nullopt, false, book));
   }
   return all;
 }
@@ -48,7 +56,8 @@ std::vector<planned_leakage> leakages_of(const draft& f) {
     }
   }
   const auto stray = [&](std::size_t i) {
-    return stray_coil{{span_of(f, f.coils[i], turns{0}, total_turns(f.coils[i].laid))}, std::max(f.shape.width - 2.0 * f.coils[i].margin, as<metres>(1e-3))};
+    return stray_coil{{span_of(f, f.coils[i], turns{0}, total_turns(f.coils[i].laid))},
+                      std::max(f.shape.width - 2.0 * f.coils[i].margin, as<metres>(1e-3))};
   };
   std::vector<planned_leakage> all;
   for (std::size_t a = 0; a < order.size(); ++a) {

@@ -15,11 +15,14 @@ struct scored {
   double score = std::numeric_limits<double>::infinity();
 };
 
-// Taps of a primary whose highest tap has n turns.
+// Taps of a primary whose highest tap has n turns, which are no fewer than the taps: no two on one turn.
 tap_turns taps_for(const demand& d, turns n) {
-  tap_turns taps;
   const double per_volt = n.count() / plain(d.primary.taps.back());
-  for (const volts& v : d.primary.taps) taps.push_back(nearest(per_volt * plain(v)));
+  tap_turns taps(d.primary.taps.size(), n);
+  for (std::size_t i = taps.size() - 1; i > 0; --i) {
+    taps[i - 1] = std::min(nearest(per_volt * plain(d.primary.taps[i - 1])), taps[i] - turns{1});
+  }
+  for (std::size_t i = 0; i < taps.size(); ++i) taps[i] = std::max(taps[i], turns{static_cast<int>(i) + 1});
   return taps;
 }
 
@@ -108,7 +111,8 @@ double volts_error(const secondary_wish& w, double found_over_wanted) {
   return volts_off(w, found_over_wanted) * (hot_heater ? 2 : 1);
 }
 
-teslas flux_at(const demand& d, const core_body& core, const tap_turns& taps, const selector_position& at, double mains_ratio) {
+teslas flux_at(const demand& d, const core_body& core, const tap_turns& taps, const selector_position& at,
+               double mains_ratio) {
   return peak_flux_density(volts_rms{at.at * mains_ratio}, d.mains.frequency, turns_in_use(at, taps), core.net_area());
 }
 
@@ -120,12 +124,15 @@ teslas worst_flux(const demand& d, const core_body& core, const tap_turns& taps)
   return worst;
 }
 
-turn_set choose_turns(const demand& d, const core_body& core, const flux_limits& limits, const std::vector<load_ratio>& ratios) {
+turn_set choose_turns(const demand& d, const core_body& core, const flux_limits& limits,
+                      const std::vector<load_ratio>& ratios) {
   if (d.primary.fixed.n) return secondaries_for(d, taps_for(d, *d.primary.fixed.n), ratios).n;
   const volts top = d.primary.taps.back();
   const double by_nominal = turns_for(volts_rms{top}, d.mains.frequency, limits.nominal, core.net_area());
-  const double by_high = turns_for(volts_rms{top * (1 + d.mains.over_ratio)}, d.mains.frequency, limits.high, core.net_area());
-  const int fewest = std::max(1, rounded_up(std::max(by_nominal, by_high)).count());
+  const double by_high =
+      turns_for(volts_rms{top * (1 + d.mains.over_ratio)}, d.mains.frequency, limits.high, core.net_area());
+  const int fewest =
+      std::max(static_cast<int>(d.primary.taps.size()), rounded_up(std::max(by_nominal, by_high)).count());
   scored best;
   for (const double stretch : {1.06, 1.25}) {
     for (int n = fewest; n <= std::max(fewest + 3, static_cast<int>(fewest * stretch)); ++n) {

@@ -26,7 +26,8 @@ wire_pick fixed_wire(const demand& d, const shop& s, const coil_role& r, const s
   const std::string where = r.primary ? "/primary/wire" : "/secondaries/" + std::to_string(r.which) + "/wire";
   const looked_up_gauge found = s.wire.look_up(size, where);
   if (!found.exact || found.wire.films.empty()) {
-    throw refused(wording::other("unknown-name", where, wording::quoted(size), "a size of the wire table whose enamel is known",
+    throw refused(wording::other("unknown-name", where, wording::quoted(size),
+                                 "a size of the wire table whose enamel is known",
                                  "the nearest is " + wording::quoted(found.wire.size)));
   }
   return pick_of(d, found.wire, wishes_of(d, r).strands.value_or(1));
@@ -35,12 +36,14 @@ wire_pick fixed_wire(const demand& d, const shop& s, const coil_role& r, const s
 wire_pick chosen_wire(const demand& d, const shop& s, const coil_role& r, metres tongue, square_metres area) {
   constexpr int most_strands = 12;  // more in hand than anyone can lay (judgement)
   const metres stiffest = std::min(1.25_mm, tongue / 20.0);
-  const square_metres frailest = std::numbers::pi / 4 * (0.1_mm * 0.1_mm);  // finer wire breaks in a hand winder's fingers (practice)
+  const square_metres frailest =
+      std::numbers::pi / 4 * (0.1_mm * 0.1_mm);  // finer wire breaks in a hand winder's fingers (practice)
   const auto wished = wishes_of(d, r).strands;
   const gauge* best = nullptr;
   int best_strands = wished.value_or(most_strands);
   for (int strands = wished.value_or(1); strands <= wished.value_or(most_strands); ++strands) {
-    const gauge* g = s.wire.at_least(d.wire.system, std::max(square_metres(area / static_cast<double>(strands)), frailest));
+    const gauge* g =
+        s.wire.at_least(d.wire.system, std::max(square_metres(area / static_cast<double>(strands)), frailest));
     if (!g) continue;
     best = g;
     best_strands = strands;
@@ -92,7 +95,8 @@ volt_amperes rating_of(const demand& d) {
 }
 
 amperes_per_square_metre usual_density(volt_amperes rating) {
-  return as<amperes_per_square_metre>(std::clamp(5.2 * std::pow(std::max(1.0, plain(rating)), -1.0 / 7), 1.8, 4.5) * 1e6);
+  return as<amperes_per_square_metre>(std::clamp(5.2 * std::pow(std::max(1.0, plain(rating)), -1.0 / 7), 1.8, 4.5) *
+                                      1e6);
 }
 
 std::vector<double> density_weights(const draft& f) {

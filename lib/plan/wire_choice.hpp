@@ -21,12 +21,13 @@ amperes_per_square_metre usual_density(volt_amperes rating);
 /// Apparent power of all secondaries as the job writes them.
 volt_amperes rating_of(const demand& d);
 
-/// Weights that share a window for least loss: density over the common one, 1 / sqrt(mean turn x copper fraction) of each
-/// coil over its mean, kept from 0.85 to 1.18. Source: Lagrange's condition for a fixed window (derived).
+/// Weights that share a window for least loss: density over the common one, 1 / sqrt(mean turn x copper fraction) of
+/// each coil over its mean, kept from 0.85 to 1.18. Source: Lagrange's condition for a fixed window (derived).
 std::vector<double> density_weights(const draft& f);
 
 /// The first size of the shop's system that carries each current, strands added where one wire would be stiffer than
-/// 1.25 mm or a twentieth of the tongue. Wires that the job fixes are kept; throws `refused` for one that the table does not have.
+/// 1.25 mm or a twentieth of the tongue. Wires that the job fixes are kept; throws `refused` for one that the table
+/// does not have.
 wire_set pick_wires(const demand& d, const shop& s, metres tongue, const std::vector<coil_amperes>& currents,
                     amperes_per_square_metre density, const std::vector<double>& weights);
 

@@ -17,21 +17,31 @@ std::string summary(const std::vector<remark>& why) {
 
 std::string_view word_of(level l) {
   switch (l) {
-    case level::pass: return "pass";
-    case level::note: return "note";
-    case level::caution: return "caution";
-    case level::stop: return "stop";
+    case level::pass:
+      return "pass";
+    case level::note:
+      return "note";
+    case level::caution:
+      return "caution";
+    case level::stop:
+      return "stop";
   }
   return "";
 }
 
 std::span<const std::string_view> check_codes() {
   static constexpr std::array<std::string_view, 32> codes{
-      "current-kind",  "ht-volts",        "flux-at-frequency", "primary-alone",  "window-fit",    "wire-identity",     "heater-turns",
-      "heater-volts",  "primary-phasing", "tap-wire",          "lead-exits",     "floating-heater", "centre-tap-circuit", "iron-identity",
-      "dc-in-iron",    "step-down",       "bucking-phase",     "fuse",           "closed-turn",   "rectifier-limits",  "rectifier-swap",
-      "choke-input",   "shorted-turn",    "heat",              "open-questions", "flux-high",     "capacitor-rating",  "regulation",
-      "capacitor-ripple", "load-beyond-supply", "height-limit", "mass-limit"};
+      "current-kind",       "ht-volts",         "flux-at-frequency",
+      "primary-alone",      "window-fit",       "wire-identity",
+      "heater-turns",       "heater-volts",     "primary-phasing",
+      "tap-wire",           "lead-exits",       "floating-heater",
+      "centre-tap-circuit", "iron-identity",    "dc-in-iron",
+      "step-down",          "bucking-phase",    "fuse",
+      "closed-turn",        "rectifier-limits", "rectifier-swap",
+      "choke-input",        "shorted-turn",     "heat",
+      "open-questions",     "flux-high",        "capacitor-rating",
+      "regulation",         "capacitor-ripple", "load-beyond-supply",
+      "height-limit",       "mass-limit"};
   return codes;
 }
 

@@ -73,16 +73,21 @@ remark quantity(std::string where, std::string_view text, const misread& why) {
   const std::string wanted = quantity_wanted(why.wanted);
   const std::string found = quoted(text);
   switch (why.reason) {
-    case misread::why::empty: return {"empty", std::move(where), "an empty text", wanted, {}};
-    case misread::why::no_number: return {"no-number", std::move(where), found + ", which holds no number", wanted, {}};
+    case misread::why::empty:
+      return {"empty", std::move(where), "an empty text", wanted, {}};
+    case misread::why::no_number:
+      return {"no-number", std::move(where), found + ", which holds no number", wanted, {}};
     case misread::why::bare_number:
-      return {"no-unit", std::move(where), found + ", a number without its unit", wanted, "write the unit after the number"};
+      return {"no-unit", std::move(where), found + ", a number without its unit", wanted,
+              "write the unit after the number"};
     case misread::why::unknown_unit:
       return {"unknown-unit", std::move(where), found + "; " + quoted(why.unit) + " is no unit known here", wanted,
               "units are written as in V, mA, ohm, uF, mm, in, degC; capitals count"};
     case misread::why::other_kind:
-      return {"wrong-unit", std::move(where), found + ", which is " + std::string(words_of(*why.found).name), wanted, {}};
-    case misread::why::not_finite: return {"not-finite", std::move(where), found + ", which is no finite figure", wanted, {}};
+      return {
+          "wrong-unit", std::move(where), found + ", which is " + std::string(words_of(*why.found).name), wanted, {}};
+    case misread::why::not_finite:
+      return {"not-finite", std::move(where), found + ", which is no finite figure", wanted, {}};
   }
   return {};
 }

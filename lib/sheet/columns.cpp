@@ -19,7 +19,8 @@ void end_line(std::string& out) {
 }  // namespace
 
 std::size_t shown_width(std::string_view text) {
-  return static_cast<std::size_t>(std::count_if(text.begin(), text.end(), [](char c) { return (static_cast<unsigned char>(c) & 0xC0u) != 0x80u; }));
+  return static_cast<std::size_t>(
+      std::count_if(text.begin(), text.end(), [](char c) { return (static_cast<unsigned char>(c) & 0xC0u) != 0x80u; }));
 }
 
 text_table::text_table(std::vector<std::string> heads) : heads_(std::move(heads)) {

@@ -84,8 +84,18 @@ state_si solve(const network_si& net) {
     current[k] = emf * per_volt(a) * net.n1 / net.ports[k].n;
   }
   const std::vector<double> none(all, 0.0);
-  state_si s{none, none, none, none, none, std::abs(i1), std::abs(terminal), std::abs(emf), std::real(terminal * std::conj(i1)),
-             std::norm(emf) * net.g_core, std::norm(i1) * net.r1, std::abs(terminal) * std::abs(i1)};
+  state_si s{none,
+             none,
+             none,
+             none,
+             none,
+             std::abs(i1),
+             std::abs(terminal),
+             std::abs(emf),
+             std::real(terminal * std::conj(i1)),
+             std::norm(emf) * net.g_core,
+             std::norm(i1) * net.r1,
+             std::abs(terminal) * std::abs(i1)};
   for (std::size_t k = 0; k < all; ++k) note_port(net, k, current, emf, s);
   return s;
 }
@@ -95,10 +105,15 @@ state_si solve(const network_si& net) {
 namespace {
 
 kernel::network_si in_si(const sine_network& net) {
-  kernel::network_si out{plain(net.mains.plain()), plain(reactance(net.frequency, as<henries>(1))),
-                         plain(net.source_resistance), static_cast<double>(net.primary_turns.count()),
-                         plain(net.primary_resistance), net.core_loss_resistance ? 1 / plain(*net.core_loss_resistance) : 0.0,
-                         net.magnetising_reactance ? 1 / plain(*net.magnetising_reactance) : 0.0, {}, {}};
+  kernel::network_si out{plain(net.mains.plain()),
+                         plain(reactance(net.frequency, as<henries>(1))),
+                         plain(net.source_resistance),
+                         static_cast<double>(net.primary_turns.count()),
+                         plain(net.primary_resistance),
+                         net.core_loss_resistance ? 1 / plain(*net.core_loss_resistance) : 0.0,
+                         net.magnetising_reactance ? 1 / plain(*net.magnetising_reactance) : 0.0,
+                         {},
+                         {}};
   for (const port& p : net.ports) {
     out.ports.push_back({static_cast<double>(p.n.count()), plain(p.resistance),
                          p.load ? plain(*p.load) : std::numeric_limits<double>::infinity(),
@@ -111,7 +126,8 @@ kernel::network_si in_si(const sine_network& net) {
 }  // namespace
 
 sine_solver::sine_solver(const sine_network& net) : net_(in_si(net)), last_{} {
-  if (net.leakage.size() != net.ports.size() * net.ports.size()) throw std::logic_error("leakage matrix of another size");
+  if (net.leakage.size() != net.ports.size() * net.ports.size())
+    throw std::logic_error("leakage matrix of another size");
 }
 
 void sine_solver::set_resistances(ohms primary, const std::vector<ohms>& ports) {

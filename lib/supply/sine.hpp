@@ -18,9 +18,10 @@ namespace turnwright::supply {
 /// One loaded coil: a winding, a half of a centre-tapped one, or a tapped part of a half.
 struct port {
   turns n;
-  ohms resistance;                    ///< of the whole port at working temperature
-  std::optional<ohms> load;           ///< absent: open
-  std::optional<std::size_t> inside;  ///< the port that contains this one: its current flows through this resistance too
+  ohms resistance;           ///< of the whole port at working temperature
+  std::optional<ohms> load;  ///< absent: open
+  std::optional<std::size_t>
+      inside;  ///< the port that contains this one: its current flows through this resistance too
 };
 
 struct sine_network {
@@ -29,29 +30,31 @@ struct sine_network {
   ohms source_resistance;
   turns primary_turns;
   ohms primary_resistance;
-  std::optional<ohms> core_loss_resistance;    ///< across p, referred to the primary
-  std::optional<ohms> magnetising_reactance;   ///< across p, referred to the primary
+  std::optional<ohms> core_loss_resistance;   ///< across p, referred to the primary
+  std::optional<ohms> magnetising_reactance;  ///< across p, referred to the primary
   std::vector<port> ports;
   std::vector<henries> leakage;  ///< ports x ports, row by row, of each port against the primary, referred to its turns
 };
 
 struct port_state {
-  volts_rms no_load;      ///< turns ratio times mains
-  volts_rms on_load;      ///< at the terminals
-  amperes_rms current;    ///< in the port's own load; with `inside` the shared part carries more
+  volts_rms no_load;    ///< turns ratio times mains
+  volts_rms on_load;    ///< at the terminals
+  amperes_rms current;  ///< in the port's own load; with `inside` the shared part carries more
   watts load;
 };
 
 struct sine_state {
   std::vector<port_state> ports;
   amperes_rms primary_current;
-  volts_rms terminal;            ///< at the primary's terminals, behind the source resistance
-  volts_rms emf;                 ///< across p
-  watts input;                   ///< into the primary's terminals
-  volt_amperes apparent;         ///< at the primary's terminals
+  volts_rms terminal;     ///< at the primary's terminals, behind the source resistance
+  volts_rms emf;          ///< across p
+  watts input;            ///< into the primary's terminals
+  volt_amperes apparent;  ///< at the primary's terminals
   watts primary_copper;
-  std::vector<watts> copper;     ///< per port; what a shared part loses is divided by the currents' shares, and the sum is right
-  std::vector<amperes_rms> shared_current;  ///< per port: current at the far end of a tap's part, with all that flows there
+  std::vector<watts>
+      copper;  ///< per port; what a shared part loses is divided by the currents' shares, and the sum is right
+  std::vector<amperes_rms>
+      shared_current;  ///< per port: current at the far end of a tap's part, with all that flows there
   watts core;
   watts output;
 };

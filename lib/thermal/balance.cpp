@@ -33,10 +33,10 @@ double in_series(std::initializer_list<double> resistances) {
 
 }  // namespace
 
-// Conductances between core (0), coil surface (1), the mean of each winding and its mid-plane. A slab heated throughout is
-// its two halves t / 2k in series through the mid-plane, with -t / 6k from there to its mean: exact for any share of heat
-// to either face. Only the two surfaces change with their rise, so the rest is factored once and they are a correction of
-// rank two.
+// Conductances between core (0), coil surface (1), the mean of each winding and its mid-plane. A slab heated throughout
+// is its two halves t / 2k in series through the mid-plane, with -t / 6k from there to its mean: exact for any share of
+// heat to either face. Only the two surfaces change with their rise, so the rest is factored once and they are a
+// correction of rank two.
 struct heat_balance::network {
   explicit network(const heated_coil& c) : c_(c), nodes_(2 * static_cast<Eigen::Index>(c.windings.size()) + 2) {
     fixed_ = Eigen::MatrixXd::Zero(nodes_, nodes_);
@@ -61,7 +61,8 @@ struct heat_balance::network {
     Eigen::Vector2d at = base.head<2>(), conductance, excess;
     for (out.steps = 1; out.steps <= 80; ++out.steps) {
       conductance = {core_W_per_K(at(0)), surface_W_per_K(at(1))};
-      excess = {conductance(0) - base_W_per_m2K * plain(c_.core_surface), conductance(1) - base_W_per_m2K * surface_m2_};
+      excess = {conductance(0) - base_W_per_m2K * plain(c_.core_surface),
+                conductance(1) - base_W_per_m2K * surface_m2_};
       const Eigen::Matrix2d m = Eigen::Matrix2d::Identity() + to_surfaces_.topRows<2>() * excess.asDiagonal();
       const Eigen::Vector2d next = m.inverse() * base.head<2>();
       const double change = (next - at).cwiseAbs().sum();
@@ -84,7 +85,9 @@ struct heat_balance::network {
     return surface_coefficient(rise, plain(c_.windings.back().height), c_.ambient.value()) * surface_m2_;
   }
   static Eigen::Index mean(std::size_t winding) { return static_cast<Eigen::Index>(winding) + 2; }
-  Eigen::Index middle(std::size_t winding) const { return mean(winding) + static_cast<Eigen::Index>(c_.windings.size()); }
+  Eigen::Index middle(std::size_t winding) const {
+    return mean(winding) + static_cast<Eigen::Index>(c_.windings.size());
+  }
   double window_length() const { return 2 * plain(c_.stack); }
   double end_length(double x) const { return 2 * plain(c_.tongue) + 2 * pi * x; }
   double turn(double x) const { return window_length() + end_length(x); }
@@ -122,7 +125,8 @@ struct heat_balance::network {
     const double share_window = window_length() / turn(out), share_end = 1 - share_window;
     const double slab = half_slab(last);
     join(middle(ws.size() - 1), 0,
-         in_series({slab / share_window, wrap / (window_length() * height), 1 / ((k_air / gap + h_gap_radiation) * window_length() * height)}));
+         in_series({slab / share_window, wrap / (window_length() * height),
+                    1 / ((k_air / gap + h_gap_radiation) * window_length() * height)}));
     join(middle(ws.size() - 1), 1, in_series({slab / share_end, wrap / (end_length(out) * height)}));
   }
 

@@ -78,7 +78,8 @@ int layer_count(const laid_winding& w) {
 
 metres wire_length(const laid_winding& w, turns from, turns to) {
   metres length = 0_m;
-  each_stretch(w, from, to, [&](const laid_block&, const layer& l, int n) { length += static_cast<double>(n) * l.mean_turn; });
+  each_stretch(w, from, to,
+               [&](const laid_block&, const layer& l, int n) { length += static_cast<double>(n) * l.mean_turn; });
   return length;
 }
 
@@ -109,8 +110,8 @@ turn_place place_of(const laid_winding& w, turns count) {
       ++number;
       const int here = count.count() - done;
       if (here <= l.n.count()) {
-        const bool far_end = 2 * here >= l.n.count();          // nearer to where this layer ends
-        const bool runs_from_start_side = number % 2 == 1;     // layers go to and fro
+        const bool far_end = 2 * here >= l.n.count();       // nearer to where this layer ends
+        const bool runs_from_start_side = number % 2 == 1;  // layers go to and fro
         return {number, runs_from_start_side != far_end, here == l.n.count() || here == 0};
       }
       done += l.n.count();

@@ -14,11 +14,11 @@ namespace turnwright {
 struct block {
   turns n;
   gauge wire;
-  metres overall;               ///< over the enamel
-  int strands = 1;              ///< in hand, side by side
-  double lay = 0.9;             ///< part of the width that turns really fill
-  metres margin;                ///< free at each end
-  metres interlayer;            ///< paper between layers
+  metres overall;                  ///< over the enamel
+  int strands = 1;                 ///< in hand, side by side
+  double lay = 0.9;                ///< part of the width that turns really fill
+  metres margin;                   ///< free at each end
+  metres interlayer;               ///< paper between layers
   std::optional<turns> per_layer;  ///< counted, overrides the lay factor
 };
 
@@ -40,8 +40,8 @@ struct laid_block {
 /// A winding as it lies: its blocks, from the core outwards.
 struct laid_winding {
   std::vector<laid_block> blocks;
-  metres inside;   ///< from the former's face to the first layer, without bulge
-  metres build;    ///< first layer to last, with the paper between, without bulge
+  metres inside;  ///< from the former's face to the first layer, without bulge
+  metres build;   ///< first layer to last, with the paper between, without bulge
 };
 
 /// Cross-section that the turns go round.
@@ -57,7 +57,8 @@ struct tube {
 /// Source: common practice. Checked: tests/winding/coil.cpp.
 turns turns_per_layer(const block& b, metres winding_width);
 
-/// Mean turn at a height over the former's face [m]: 2 (across + deep) + 2 pi h, h with bulge. Source: geometry (exact).
+/// Mean turn at a height over the former's face [m]: 2 (across + deep) + 2 pi h, h with bulge. Source: geometry
+/// (exact).
 metres mean_turn_at(const tube& t, metres height);
 
 /// Lays the blocks of a winding from a height outwards, each block beginning on a layer of its own, with the block's

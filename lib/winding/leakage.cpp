@@ -27,8 +27,12 @@ struct coil_si {
     for (const piece& p : pieces) sum += p.share * std::clamp((x - p.inner) / (p.outer - p.inner), 0.0, 1.0);
     return sum;
   }
-  double innermost() const { return std::min_element(pieces.begin(), pieces.end(), [](auto& a, auto& b) { return a.inner < b.inner; })->inner; }
-  double outermost() const { return std::max_element(pieces.begin(), pieces.end(), [](auto& a, auto& b) { return a.outer < b.outer; })->outer; }
+  double innermost() const {
+    return std::min_element(pieces.begin(), pieces.end(), [](auto& a, auto& b) { return a.inner < b.inner; })->inner;
+  }
+  double outermost() const {
+    return std::max_element(pieces.begin(), pieces.end(), [](auto& a, auto& b) { return a.outer < b.outer; })->outer;
+  }
 };
 
 double rogowski(double height, double field_width) {
@@ -37,7 +41,8 @@ double rogowski(double height, double field_width) {
 }
 
 // Integral of (F_a - F_1)(F_b - F_1) l(x): piecewise cubic, so Simpson's rule is exact on each piece.
-double energy_integral(const coil_si& a, const coil_si& b, const coil_si& first, const std::vector<double>& edges, double around) {
+double energy_integral(const coil_si& a, const coil_si& b, const coil_si& first, const std::vector<double>& edges,
+                       double around) {
   const auto at = [&](double x) {
     return (a.inside(x) - first.inside(x)) * (b.inside(x) - first.inside(x)) * (around + 2 * pi * x);
   };
@@ -75,7 +80,8 @@ std::vector<henries> leakage_against_first(const std::vector<stray_coil>& coils,
   const double scale = mu0_H_per_m * n.count() * n.count();
   for (std::size_t j = 0; j < loops; ++j) {
     for (std::size_t m = j; m < loops; ++m) {
-      const double l = scale * factor[j] * factor[m] * energy_integral(si[j + 1], si[m + 1], first, edges, plain(space.around));
+      const double l =
+          scale * factor[j] * factor[m] * energy_integral(si[j + 1], si[m + 1], first, edges, plain(space.around));
       matrix[j * loops + m] = matrix[m * loops + j] = as<henries>(l);
     }
   }

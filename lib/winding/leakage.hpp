@@ -32,12 +32,11 @@ struct stray_space {
 ///   L_jm = mu0 n^2 sqrt(K_j K_m / (b_j b_m))  integral (F_j - F_1) (F_m - F_1) l(x) dx
 ///
 /// F is the part of a coil's ampere-turns inside x, b the mean height of coil and first, K the Rogowski factor
-/// 1 - (1 - exp(-pi b / w)) w / (pi b) with w the width of the pair's field. The geometric mean keeps the matrix positive
-/// semidefinite and leaves every pair with the first its own factor; a pair of others, as the matrix implies it, may differ from
-/// `pair_leakage` by some 6 %. Holds for full-height concentric windings
-/// within 6 %; for windings of unequal height it reads up to 11 % off.
-/// Source: energy of the stray field (exact in one dimension); K by Rogowski (memory). Checked:
-/// tests/winding/leakage.cpp against a finite-element solution.
+/// 1 - (1 - exp(-pi b / w)) w / (pi b) with w the width of the pair's field. The geometric mean keeps the matrix
+/// positive semidefinite and leaves every pair with the first its own factor; a pair of others, as the matrix implies
+/// it, may differ from `pair_leakage` by some 6 %. Holds for full-height concentric windings within 6 %; for windings
+/// of unequal height it reads up to 11 % off. Source: energy of the stray field (exact in one dimension); K by Rogowski
+/// (memory). Checked: tests/winding/leakage.cpp against a finite-element solution.
 std::vector<henries> leakage_against_first(const std::vector<stray_coil>& coils, const stray_space& space, turns n);
 
 /// Leakage of one pair, referred to n turns of the first [H]. Source and check as above.

@@ -18,20 +18,29 @@ struct film_column {
   std::string_view column;
   std::string_view grade;
 };
-constexpr std::array metric_films{film_column{"grade1_mm", "1"}, film_column{"grade2_mm", "2"}, film_column{"grade3_mm", "3"}};
+constexpr std::array metric_films{film_column{"grade1_mm", "1"}, film_column{"grade2_mm", "2"},
+                                  film_column{"grade3_mm", "3"}};
 constexpr std::array awg_films{film_column{"single_mm", "single"}, film_column{"heavy_mm", "heavy"}};
 
 metres mm(double x) { return as<metres>(x * 1e-3); }
 
 gauge read_row(const row& r, wire_system system, std::span<const film_column> films) {
-  gauge g{.size = r.text("size"), .also = r.list("aliases"), .system = system, .bare = mm(r.needed("bare_mm")),
-          .listed = {}, .films = {}, .resistance_least = {}, .resistance_most = {},
-          .known_how = r.known_how(), .source = r.source()};
+  gauge g{.size = r.text("size"),
+          .also = r.list("aliases"),
+          .system = system,
+          .bare = mm(r.needed("bare_mm")),
+          .listed = {},
+          .films = {},
+          .resistance_least = {},
+          .resistance_most = {},
+          .known_how = r.known_how(),
+          .source = r.source()};
   if (const auto listed = r.number("listed_mm")) g.listed = mm(*listed);
   if (const auto least = r.number("resistance_min_ohm_per_m")) g.resistance_least = as<ohms_per_metre>(*least);
   if (const auto most = r.number("resistance_max_ohm_per_m")) g.resistance_most = as<ohms_per_metre>(*most);
   double under = plain(g.bare);
-  if (!(under > 0)) throw refused(wording::other("bad-row", r.place("bare_mm"), r.text("bare_mm"), "a diameter over zero"));
+  if (!(under > 0))
+    throw refused(wording::other("bad-row", r.place("bare_mm"), r.text("bare_mm"), "a diameter over zero"));
   for (const film_column& f : films) {
     const auto over = r.number(f.column);
     if (!over) continue;
@@ -129,18 +138,20 @@ looked_up_gauge wire_book::look_up(std::string_view text, const std::string& whe
     return {nearest(wire_system::awg, awg_diameter(std::clamp(*number, -10.0, 60.0))), false};
   }
   if (gauge_number(text, "swg")) {
-    throw refused(wording::other("unknown-name", where, wording::quoted(text), "an SWG number from " +
-                  swg_.back().size + " to " + swg_.front().size, "the table holds whole numbers only"));
+    throw refused(wording::other("unknown-name", where, wording::quoted(text),
+                                 "an SWG number from " + swg_.back().size + " to " + swg_.front().size,
+                                 "the table holds whole numbers only"));
   }
   const reading<metres> length = read<metres>(text);
   if (length.value && plain(*length.value) > 0) {
     const gauge& g = nearest(wire_system::metric, *length.value);
     return {g, std::abs(plain(*length.value) / plain(g.bare) - 1) < 1e-6};
   }
-  throw refused(wording::other(
-      length.fault.reason == misread::why::bare_number ? "gauge-system" : "unknown-name", where, wording::quoted(text),
-      "a wire size such as \"0.5 mm\", \"24 AWG\" or \"33 SWG\"",
-      length.fault.reason == misread::why::bare_number ? "a gauge number means nothing without its system: AWG, SWG or mm" : ""));
+  throw refused(wording::other(length.fault.reason == misread::why::bare_number ? "gauge-system" : "unknown-name",
+                               where, wording::quoted(text), "a wire size such as \"0.5 mm\", \"24 AWG\" or \"33 SWG\"",
+                               length.fault.reason == misread::why::bare_number
+                                   ? "a gauge number means nothing without its system: AWG, SWG or mm"
+                                   : ""));
 }
 
 const gauge& wire_book::nearest(wire_system s, metres bare) const {

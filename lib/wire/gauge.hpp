@@ -27,9 +27,9 @@ struct gauge {
   std::string size;  ///< "0.5 mm", "24 AWG", "33 SWG"
   std::vector<std::string> also;
   wire_system system = wire_system::metric;
-  metres bare;                    ///< nominal; AWG: the formula diameter of ASTM B258
-  std::optional<metres> listed;   ///< AWG: the rounded inch figure
-  std::vector<film> films;        ///< thinnest first; empty where the table has no figures
+  metres bare;                                     ///< nominal; AWG: the formula diameter of ASTM B258
+  std::optional<metres> listed;                    ///< AWG: the rounded inch figure
+  std::vector<film> films;                         ///< thinnest first; empty where the table has no figures
   std::optional<ohms_per_metre> resistance_least;  ///< limits of the standard at 20 degC
   std::optional<ohms_per_metre> resistance_most;
   standing known_how = standing::estimate;

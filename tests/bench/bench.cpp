@@ -31,8 +31,17 @@ std::string example(const char* name) {
 }
 
 supply::sine_network amplifier_network() {
-  supply::sine_network net{volts_rms{as<volts>(230)}, as<hertz>(50), as<ohms>(0.5), turns{430}, as<ohms>(5.7), as<ohms>(5e3), as<ohms>(2e3), {}, {}};
-  for (const auto& [n, r, load] : {std::tuple{657, 39.1, 2060.0}, {657, 41.5, 2060.0}, {10, 0.09, 2.6}, {12, 0.036, 1.5}}) {
+  supply::sine_network net{volts_rms{as<volts>(230)},
+                           as<hertz>(50),
+                           as<ohms>(0.5),
+                           turns{430},
+                           as<ohms>(5.7),
+                           as<ohms>(5e3),
+                           as<ohms>(2e3),
+                           {},
+                           {}};
+  for (const auto& [n, r, load] :
+       {std::tuple{657, 39.1, 2060.0}, {657, 41.5, 2060.0}, {10, 0.09, 2.6}, {12, 0.036, 1.5}}) {
     net.ports.push_back({turns{n}, as<ohms>(r), as<ohms>(load), std::nullopt});
   }
   net.leakage.assign(16, as<henries>(1e-3));
@@ -41,7 +50,13 @@ supply::sine_network amplifier_network() {
 }
 
 supply::kernel::network_si amplifier_kernel() {
-  return {230, 314.159265358979, 0.5, 430, 5.7, 1 / 5e3, 1 / 2e3,
+  return {230,
+          314.159265358979,
+          0.5,
+          430,
+          5.7,
+          1 / 5e3,
+          1 / 2e3,
           {{657, 39.1, 2060, -1}, {657, 41.5, 2060, -1}, {10, 0.09, 2.6, -1}, {12, 0.036, 1.5, -1}},
           {5e-3, 1e-3, 1e-3, 1e-3, 1e-3, 5e-3, 1e-3, 1e-3, 1e-3, 1e-3, 5e-3, 1e-3, 1e-3, 1e-3, 1e-3, 5e-3}};
 }

@@ -24,9 +24,11 @@ ran run_tool(const std::string& words, const std::string& input = "") {
   std::filesystem::create_directories(folder);
   const std::string base = folder + "/" + std::to_string(std::hash<std::string>{}(words + input));
   std::ofstream(base + ".in", std::ios::binary) << input;
-  const std::string command = "cd " + folder + " && '" TURNWRIGHT_TOOL "' " + words + " <" + base + ".in >" + base + ".out 2>" + base + ".err";
+  const std::string command =
+      "cd " + folder + " && '" TURNWRIGHT_TOOL "' " + words + " <" + base + ".in >" + base + ".out 2>" + base + ".err";
   const int raw = std::system(command.c_str());
-  ran r{WIFEXITED(raw) ? WEXITSTATUS(raw) : -1, turnwright::testing::file_text(base + ".out"), turnwright::testing::file_text(base + ".err")};
+  ran r{WIFEXITED(raw) ? WEXITSTATUS(raw) : -1, turnwright::testing::file_text(base + ".out"),
+        turnwright::testing::file_text(base + ".err")};
   for (const char* tail : {".in", ".out", ".err"}) std::filesystem::remove(base + tail);
   return r;
 }
@@ -91,8 +93,10 @@ TEST_CASE("a job that cannot be met exits with 1 and still gives the whole resul
 }
 
 TEST_CASE("a wrong command line exits with 2 and says what to do", "[cli]") {
-  for (const char* words : {"", "plam x.json", "plan", "plan no-such-file.json", "plan x.json --mains \"230 V 50 Hz\"", "wire '24'", "wire 'xyz'", "core 'EI 75'",
-                            "steel 'M400-50A' --at '1.3'", "steel 'M400-50A' --at '13 T'", "plan --winding 'a: 6 V 1 A'", "--nonsense", "core 'EI 96' --tables /no/such/folder"}) {
+  for (const char* words :
+       {"", "plam x.json", "plan", "plan no-such-file.json", "plan x.json --mains \"230 V 50 Hz\"", "wire '24'",
+        "wire 'xyz'", "core 'EI 75'", "steel 'M400-50A' --at '1.3'", "steel 'M400-50A' --at '13 T'",
+        "plan --winding 'a: 6 V 1 A'", "--nonsense", "core 'EI 96' --tables /no/such/folder"}) {
     const ran r = run_tool(words);
     INFO(words << ": " << r.aside);
     CHECK(r.status == 2);
@@ -102,7 +106,8 @@ TEST_CASE("a wrong command line exits with 2 and says what to do", "[cli]") {
 }
 
 TEST_CASE("commands that come later say so", "[cli]") {
-  for (const char* words : {"survey x.json", "supply -", "rewind x.json", "convert x.json", "proof a b", "valve GZ34"}) {
+  for (const char* words :
+       {"survey x.json", "supply -", "rewind x.json", "convert x.json", "proof a b", "valve GZ34"}) {
     const ran r = run_tool(words);
     CHECK(r.status == 2);
     CHECK(r.aside.find("not-yet") != std::string::npos);
@@ -118,7 +123,8 @@ TEST_CASE("no file is overwritten without being told to", "[cli]") {
   std::filesystem::create_directories(scratch(""));
   const std::string kept = scratch("kept.json");
   std::ofstream(kept) << "mine";
-  const std::string job = "--mains '230 V 50 Hz' --winding 'heaters: 6.3 V 4 A ct' --winding 'rectifier heater: 5 V 2 A'";
+  const std::string job =
+      "--mains '230 V 50 Hz' --winding 'heaters: 6.3 V 4 A ct' --winding 'rectifier heater: 5 V 2 A'";
   const ran r = run_tool("plan " + job + " --json='" + kept + "'");
   CHECK(r.status == 2);
   CHECK(r.out.empty());
@@ -132,7 +138,10 @@ TEST_CASE("a job from the command line can be kept and planned again to the same
   const std::string kept = scratch("short.json");
   std::filesystem::create_directories(scratch(""));
   std::filesystem::remove(kept);
-  const ran first = run_tool("plan --json --mains '230 V 50 Hz' --winding 'HT: 250-0-250 V 80 mA rms' --winding 'heaters: 6.3 V 3 A ct' --write-job '" + kept + "'");
+  const ran first = run_tool(
+      "plan --json --mains '230 V 50 Hz' --winding 'HT: 250-0-250 V 80 mA rms' --winding 'heaters: 6.3 V 3 A ct' "
+      "--write-job '" +
+      kept + "'");
   INFO(first.aside);
   REQUIRE(first.status == 0);
   CHECK(run_tool("plan --json '" + kept + "'").out == first.out);
@@ -142,7 +151,8 @@ TEST_CASE("a job from the command line can be kept and planned again to the same
 TEST_CASE("the shop's own rows stand in front, and the result names their source", "[cli]") {
   const std::string folder = scratch("shop-tables");
   std::filesystem::create_directories(folder);
-  std::ofstream(folder + "/laminations.csv") << "name,aliases,family,tongue_mm,outer_limb_mm,window_width_mm,window_length_mm,yoke_mm,width_mm,height_mm,standing,source\n"
+  std::ofstream(folder + "/laminations.csv") << "name,aliases,family,tongue_mm,outer_limb_mm,window_width_mm,window_"
+                                                "length_mm,yoke_mm,width_mm,height_mm,standing,source\n"
                                              << "EI 96,,ei,32,16,16,50,16,96,82,read,measured in the shop\n";
   const json core = json::parse(run_tool("core 'EI 96' --json --tables '" + folder + "'").out)["core"];
   CHECK(core["window_length_mm"] == 50.0);

@@ -36,13 +36,29 @@ const shop& tools() {
 
 design planned(const json& job) { return plan(read_job(job.dump(), "job", tools(), tables()), tools()); }
 
-double area_mm2(const json& wire) { return std::numbers::pi / 4 * std::pow(wire["bare_mm"].get<double>(), 2) * wire["strands"].get<int>(); }
+double area_mm2(const json& wire) {
+  return std::numbers::pi / 4 * std::pow(wire["bare_mm"].get<double>(), 2) * wire["strands"].get<int>();
+}
 
 void no_missing_figure(const json& node) {
   if (node.is_structured()) {
     for (const auto& item : node) no_missing_figure(item);
   }
   REQUIRE_FALSE(node.is_null());
+}
+
+// A winding of several wires: each section by itself, and their sum the whole.
+void check_sections(const json& w) {
+  double ohms = 0, mass = 0, length = 0;
+  for (const json& s : w["sections"]) {
+    const double l = s["length_m"];
+    ohms += l / (58 * area_mm2(s["wire"]));
+    mass += l * area_mm2(s["wire"]) * 8890e-6;
+    length += l;
+  }
+  REQUIRE(w["length_m"].get<double>() == Approx(length).epsilon(1e-6));
+  REQUIRE(w["resistance_20C_ohm"].get<double>() == Approx(ohms).epsilon(1e-6));
+  REQUIRE(w["mass_kg"].get<double>() == Approx(mass).epsilon(1e-6));
 }
 
 void check_windings(const json& r) {
@@ -52,13 +68,19 @@ void check_windings(const json& r) {
     REQUIRE(w["turns"].is_number_integer());
     REQUIRE(w["turns"] >= 1);
     REQUIRE(w["layers"].get<int>() * w["turns_per_layer"].get<int>() >= w["turns"].get<int>());
-    REQUIRE(w["turns"].get<int>() * w["mean_turn_mm"].get<double>() * 1e-3 == Approx(w["length_m"].get<double>()).epsilon(1e-6));
-    if (w.contains("sections")) continue;
+    REQUIRE(w["turns"].get<int>() * w["mean_turn_mm"].get<double>() * 1e-3 ==
+            Approx(w["length_m"].get<double>()).epsilon(1e-6));
+    if (w.contains("sections")) {
+      check_sections(w);
+      continue;
+    }
     const double ohms = w["length_m"].get<double>() / (58 * area_mm2(w["wire"]));
     REQUIRE(w["resistance_20C_ohm"].get<double>() == Approx(ohms).epsilon(1e-6));
-    REQUIRE(w["current_A"].get<double>() / area_mm2(w["wire"]) == Approx(w["current_density_A_per_mm2"].get<double>()).epsilon(1e-6));
+    REQUIRE(w["current_A"].get<double>() / area_mm2(w["wire"]) ==
+            Approx(w["current_density_A_per_mm2"].get<double>()).epsilon(1e-6));
     if (w.contains("mass_kg")) {
-      REQUIRE(w["mass_kg"].get<double>() * w["resistance_20C_ohm"].get<double>() == Approx(8890e-6 / 58 * std::pow(w["length_m"].get<double>(), 2)).epsilon(1e-5));
+      REQUIRE(w["mass_kg"].get<double>() * w["resistance_20C_ohm"].get<double>() ==
+              Approx(8890e-6 / 58 * std::pow(w["length_m"].get<double>(), 2)).epsilon(1e-5));
     }
   }
 }
@@ -70,18 +92,21 @@ void check_pitch(const json& r) {
   for (const json& w : r["windings"]) {
     if (w.contains("kind") || w.contains("tap_of")) continue;
     const double pitch = w["wire"]["overall_mm"].get<double>() * w["wire"]["strands"].get<int>();
-    if (!w.contains("sections")) REQUIRE((w["turns_per_layer"].get<int>() + 1) * pitch <= width - 2 * w["margin_mm"].get<double>() + 1e-6);
+    if (!w.contains("sections"))
+      REQUIRE((w["turns_per_layer"].get<int>() + 1) * pitch <= width - 2 * w["margin_mm"].get<double>() + 1e-6);
     const int before_last = w["turns"].get<int>() - w["last_layer_turns"].get<int>();
     if (!w.contains("sections")) REQUIRE(before_last == (w["layers"].get<int>() - 1) * w["turns_per_layer"].get<int>());
   }
 }
 
 void check_flux(const json& job, const json& r) {
-  const double f = std::stod(job["mains"]["frequency"].get<std::string>()), over = std::stod(job["mains"]["tolerance"].get<std::string>()) / 100;
+  const double f = std::stod(job["mains"]["frequency"].get<std::string>()),
+               over = std::stod(job["mains"]["tolerance"].get<std::string>()) / 100;
   const double area = r["core"]["net_area_mm2"].get<double>() * 1e-6;
   double worst = 0;
   for (const json& s : r["settings"]) {
-    const double b = std::stod(s["at"].get<std::string>()) / (std::sqrt(2.0) * std::numbers::pi * f * s["turns"].get<int>() * area);
+    const double b =
+        std::stod(s["at"].get<std::string>()) / (std::sqrt(2.0) * std::numbers::pi * f * s["turns"].get<int>() * area);
     REQUIRE(s["flux_density_T"].get<double>() == Approx(b).epsilon(1e-6));
     worst = std::max(worst, b * (1 + over));
   }
@@ -91,20 +116,57 @@ void check_flux(const json& job, const json& r) {
 void check_volts_per_turn(const json& r) {
   const double per_turn = r["volts_per_turn_V"];
   for (const json& w : r["windings"]) {
-    if (!w.contains("kind")) REQUIRE(w["voltage_no_load_V"].get<double>() / w["turns"].get<int>() == Approx(per_turn).epsilon(1e-6));
+    if (!w.contains("kind"))
+      REQUIRE(w["voltage_no_load_V"].get<double>() / w["turns"].get<int>() == Approx(per_turn).epsilon(1e-6));
   }
 }
 
 void check_power(const json& r) {
   const json& loss = r["losses"];
-  REQUIRE(loss["copper_W"].get<double>() + loss["core_W"].get<double>() == Approx(loss["total_W"].get<double>()).epsilon(1e-7));
-  REQUIRE(r["input_W"].get<double>() == Approx(r["output_W"].get<double>() + loss["total_W"].get<double>()).epsilon(1e-6));
+  REQUIRE(loss["copper_W"].get<double>() + loss["core_W"].get<double>() ==
+          Approx(loss["total_W"].get<double>()).epsilon(1e-7));
+  REQUIRE(r["input_W"].get<double>() ==
+          Approx(r["output_W"].get<double>() + loss["total_W"].get<double>()).epsilon(1e-6));
   double copper = 0;
   for (const json& w : r["windings"]) copper += w.value("loss_W", 0.0);
   REQUIRE(copper == Approx(loss["copper_W"].get<double>()).epsilon(1e-6));
-  const double primary = r["windings"][0]["resistance_20C_ohm"].get<double>();
-  REQUIRE(r["core"]["no_load_power_W"].get<double>() >= r["core"]["no_load_core_loss_W"].get<double>());
-  REQUIRE(primary > 0);
+  double material = 0, wound = 0;
+  for (const json& m : r["materials"])
+    material += m["what"].get<std::string>().rfind("wire ", 0) == 0 ? m["mass_kg"].get<double>() : 0.0;
+  for (const json& w : r["windings"]) wound += w.value("mass_kg", 0.0);
+  REQUIRE(material == Approx(1.05 * wound).epsilon(1e-6));  // a twentieth for waste
+}
+
+// Loss of each winding from its hot ohms and amps; no-load power from core loss and the primary's cold ohms.
+void check_losses(const json& job, const json& r) {
+  for (const json& w : r["windings"]) {
+    const bool shared = job.dump().find("tap_of") != std::string::npos && w["name"] == "HT";
+    if (w.contains("kind") || w.contains("tap_of") || w.contains("sections") || shared) continue;
+    INFO(w["name"]);
+    double watts = 0;
+    const bool halves_alone = w.contains("halves") && w["name"] == "HT";
+    if (halves_alone) {
+      for (const json& h : w["halves"])
+        watts += h["resistance_hot_ohm"].get<double>() * std::pow(h["current_A"].get<double>(), 2);
+    } else if (w["name"].get<std::string>().rfind("primary", 0) != 0) {
+      watts = w["resistance_hot_ohm"].get<double>() * std::pow(w["current_A"].get<double>(), 2);
+    } else {
+      continue;  // beyond the tap in use a primary carries nothing
+    }
+    REQUIRE(w["loss_W"].get<double>() == Approx(watts).epsilon(1e-5));
+    // hot over cold by (234.5 + T) / 254.5 lies between that of the ambient and that of the highest mains
+    const double hot = w["resistance_hot_ohm"].get<double>() / w["resistance_20C_ohm"].get<double>();
+    const double ambient = r["thermal"]["ambient_C"];
+    REQUIRE(hot >= (234.5 + ambient) / 254.5 - 1e-9);
+    REQUIRE(hot <= (234.5 + ambient + w["rise_K"].get<double>()) / 254.5 + 1e-9);
+  }
+  if (job["primary"].contains("taps") && job["primary"]["taps"].size() == 1) {
+    const double idle = r["core"]["no_load_current_A"];
+    REQUIRE(r["core"]["no_load_power_W"].get<double>() ==
+            Approx(r["core"]["no_load_core_loss_W"].get<double>() +
+                   idle * idle * r["windings"][0]["resistance_20C_ohm"].get<double>())
+                .epsilon(1e-6));
+  }
 }
 
 // Ampere-turns balance: the primary's are those of all loads and of the no-load current together. The phases differ by
@@ -117,7 +179,8 @@ void check_ampere_turns(const design& p) {
     referred += plain(p.made.nominal.electric.ports[k].current.plain()) * (ports[k].to - ports[k].from).count() / n1;
   }
   const double line = plain(p.made.nominal.electric.primary_current.plain());
-  const double no_load = std::hypot(plain(p.made.nominal.magnetising.plain()), plain(p.made.nominal.core_loss) / plain(p.made.nominal.electric.emf.plain()));
+  const double no_load = std::hypot(plain(p.made.nominal.magnetising.plain()),
+                                    plain(p.made.nominal.core_loss) / plain(p.made.nominal.electric.emf.plain()));
   REQUIRE(line <= referred + no_load * (1 + 1e-9));
   if (p.windable) REQUIRE(line >= 0.97 * referred);
 }
@@ -146,6 +209,7 @@ void check_all(const json& job) {
   check_flux(job, r);
   check_volts_per_turn(r);
   check_power(r);
+  check_losses(job, r);
   check_ampere_turns(p);
   check_report(p);
   if (p.windable) {
@@ -155,7 +219,8 @@ void check_all(const json& job) {
     REQUIRE(p.made.high.residual_K < 1e-7);
     for (const check& c : p.checks) REQUIRE(c.weight != level::stop);
   } else {
-    const bool says_why = std::any_of(p.checks.begin(), p.checks.end(), [](const check& c) { return c.weight == level::stop && !c.cure.empty(); });
+    const bool says_why = std::any_of(p.checks.begin(), p.checks.end(),
+                                      [](const check& c) { return c.weight == level::stop && !c.cure.empty(); });
     REQUIRE(says_why);
   }
 }

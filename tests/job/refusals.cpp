@@ -111,8 +111,8 @@ TEST_CASE("a centre tap wants an even number of turns", "[refusal]") {
 }
 
 TEST_CASE("what is missing is named", "[refusal]") {
-  for (const char* pointer : {"/format", "/mains", "/primary", "/secondaries", "/mains/frequency", "/secondaries/0/name", "/secondaries/0/voltage",
-                              "/secondaries/0/current"}) {
+  for (const char* pointer : {"/format", "/mains", "/primary", "/secondaries", "/mains/frequency",
+                              "/secondaries/0/name", "/secondaries/0/voltage", "/secondaries/0/current"}) {
     json job = json::parse(good);
     const json::json_pointer at(pointer);
     job[at.parent_pointer()].erase(at.back());
@@ -175,7 +175,8 @@ TEST_CASE("names match without regard to case, blanks and hyphens, and by alias"
 }
 
 TEST_CASE("the short form makes a job that is read again", "[refusal]") {
-  const std::string text = job_of({"230 V 50 Hz", {"HT: 300-0-300 V 120 mA rms", "heaters: 6.3 V 4 A ct", "rectifier heater: 5V 2A"}});
+  const std::string text =
+      job_of({"230 V 50 Hz", {"HT: 300-0-300 V 120 mA rms", "heaters: 6.3 V 4 A ct", "rectifier heater: 5V 2A"}});
   CHECK(faults_of(text).empty());
   const json job = json::parse(text);
   CHECK(job["secondaries"][0]["current"] == "120 mA");

@@ -62,15 +62,23 @@ TEST_CASE("one winding without leakage or magnetising branch is a voltage divide
     net.core_loss_resistance.reset();
     net.magnetising_reactance.reset();
     const double ratio = static_cast<double>(net.ports[0].n.count()) / net.primary_turns.count();
-    const double seen = plain(net.ports[0].resistance) + (plain(net.source_resistance) + plain(net.primary_resistance)) * ratio * ratio;
+    const double seen =
+        plain(net.ports[0].resistance) + (plain(net.source_resistance) + plain(net.primary_resistance)) * ratio * ratio;
     const double load = plain(*net.ports[0].load), expected = plain(net.mains.plain()) * ratio * load / (load + seen);
     REQUIRE(plain(supply::solve(net).ports[0].on_load.plain()) == Approx(expected).epsilon(1e-12));
   }
 }
 
 TEST_CASE("a series circuit of resistance and leakage gives the textbook current", "[property]") {
-  supply::sine_network net{volts_rms{100_V}, 50_Hz, 0_ohm, turns{100}, 3_ohm, std::nullopt, std::nullopt,
-                           {{turns{100}, 1_ohm, 6_ohm, std::nullopt}}, {inductance_of(10_ohm, 50_Hz)}};
+  supply::sine_network net{volts_rms{100_V},
+                           50_Hz,
+                           0_ohm,
+                           turns{100},
+                           3_ohm,
+                           std::nullopt,
+                           std::nullopt,
+                           {{turns{100}, 1_ohm, 6_ohm, std::nullopt}},
+                           {inductance_of(10_ohm, 50_Hz)}};
   const supply::sine_state s = supply::solve(net);
   CHECK(plain(s.primary_current.plain()) == Approx(100 / std::hypot(10.0, 10.0)).epsilon(1e-12));
   CHECK(plain(s.ports[0].on_load.plain()) == Approx(600 / std::hypot(10.0, 10.0)).epsilon(1e-12));
@@ -85,7 +93,8 @@ TEST_CASE("the ampere-turns of load and no-load current make up the primary's", 
     net.ports.resize(1);
     net.leakage.assign(1, l);
     const double n = static_cast<double>(net.ports[0].n.count()) / net.primary_turns.count();
-    const std::complex<double> branch(plain(net.ports[0].resistance + *net.ports[0].load) / (n * n), plain(reactance(net.frequency, l)));
+    const std::complex<double> branch(plain(net.ports[0].resistance + *net.ports[0].load) / (n * n),
+                                      plain(reactance(net.frequency, l)));
     const std::complex<double> shunt(1 / plain(*net.core_loss_resistance), -1 / plain(*net.magnetising_reactance));
     const double emf = plain(supply::solve(net).emf.plain());
     const supply::sine_state s = supply::solve(net);
@@ -107,14 +116,21 @@ TEST_CASE("a load on one winding pulls the others down as much as theirs would p
       const double open = plain(supply::solve(one).ports[loaded].no_load.plain());
       one.ports[loaded].load = as<ohms>(open * open / 1e-4);  // a tenth of a milliwatt: small enough to be linear
       const supply::sine_state before = supply::solve(net), after = supply::solve(one);
-      return (plain(before.ports[watched].on_load.plain()) - plain(after.ports[watched].on_load.plain())) / plain(after.ports[loaded].current.plain());
+      return (plain(before.ports[watched].on_load.plain()) - plain(after.ports[watched].on_load.plain())) /
+             plain(after.ports[loaded].current.plain());
     };
     REQUIRE(change(0, 1) == Approx(change(1, 0)).epsilon(2e-3));
   }
 }
 
 TEST_CASE("a tap carries its own current and that of its half through the shared part", "[property]") {
-  supply::sine_network net{volts_rms{100_V}, 50_Hz, 0_ohm, turns{1000}, 0_ohm, std::nullopt, std::nullopt,
+  supply::sine_network net{volts_rms{100_V},
+                           50_Hz,
+                           0_ohm,
+                           turns{1000},
+                           0_ohm,
+                           std::nullopt,
+                           std::nullopt,
                            {{turns{1000}, 10_ohm, 90_ohm, std::nullopt}, {turns{500}, 5_ohm, 45_ohm, std::size_t{0}}},
                            std::vector<henries>(4, 0_H)};
   const supply::sine_state s = supply::solve(net);
@@ -128,11 +144,20 @@ TEST_CASE("a tap carries its own current and that of its half through the shared
 
 TEST_CASE("two taps of one half share the shorter one's copper", "[property]") {
   // The half has 10 ohm; the taps 5 and 2 ohm of it. Copper by its three stretches.
-  const supply::sine_network net{volts_rms{100_V}, 50_Hz, 0_ohm, turns{1000}, 0_ohm, std::nullopt, std::nullopt,
-                                 {{turns{1000}, 10_ohm, 900_ohm, std::nullopt}, {turns{500}, 5_ohm, 300_ohm, std::size_t{0}}, {turns{200}, 2_ohm, 100_ohm, std::size_t{0}}},
+  const supply::sine_network net{volts_rms{100_V},
+                                 50_Hz,
+                                 0_ohm,
+                                 turns{1000},
+                                 0_ohm,
+                                 std::nullopt,
+                                 std::nullopt,
+                                 {{turns{1000}, 10_ohm, 900_ohm, std::nullopt},
+                                  {turns{500}, 5_ohm, 300_ohm, std::size_t{0}},
+                                  {turns{200}, 2_ohm, 100_ohm, std::size_t{0}}},
                                  std::vector<henries>(9, 0_H)};
   const supply::sine_state s = supply::solve(net);
-  const double i = plain(s.ports[0].current.plain()), j = plain(s.ports[1].current.plain()), k = plain(s.ports[2].current.plain());
+  const double i = plain(s.ports[0].current.plain()), j = plain(s.ports[1].current.plain()),
+               k = plain(s.ports[2].current.plain());
   CHECK(plain(s.ports[0].on_load.plain()) == Approx(100 - 5 * i - 3 * (i + j) - 2 * (i + j + k)).epsilon(1e-12));
   CHECK(plain(s.ports[1].on_load.plain()) == Approx(50 - 3 * (i + j) - 2 * (i + j + k)).epsilon(1e-12));
   CHECK(plain(s.ports[2].on_load.plain()) == Approx(20 - 2 * (i + j + k)).epsilon(1e-12));
@@ -142,8 +167,11 @@ TEST_CASE("two taps of one half share the shorter one's copper", "[property]") {
 }
 
 TEST_CASE("the kernel in plain doubles and the door in quantities give the same", "[property]") {
-  const supply::sine_network net{volts_rms{230_V}, 50_Hz, 0_ohm, turns{700}, 20_ohm, 20e3_ohm, 5e3_ohm, {{turns{20}, 35_mohm, 2_ohm, std::nullopt}}, {12_mH}};
-  const supply::kernel::network_si si{230, 2 * std::numbers::pi * 50, 0, 700, 20, 1 / 20e3, 1 / 5e3, {{20, 0.035, 2, -1}}, {0.012}};
+  const supply::sine_network net{volts_rms{230_V}, 50_Hz,    0_ohm,   turns{700},
+                                 20_ohm,           20e3_ohm, 5e3_ohm, {{turns{20}, 35_mohm, 2_ohm, std::nullopt}},
+                                 {12_mH}};
+  const supply::kernel::network_si si{230,     2 * std::numbers::pi * 50, 0,      700, 20, 1 / 20e3,
+                                      1 / 5e3, {{20, 0.035, 2, -1}},      {0.012}};
   CHECK(plain(supply::solve(net).ports[0].on_load.plain()) == supply::kernel::solve(si).v[0]);
 }
 

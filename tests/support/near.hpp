@@ -16,7 +16,9 @@
 namespace turnwright::testing {
 
 /// Whether a figure lies within so many per cent of what was expected.
-inline Approx within_percent(double expected, double percent) { return Approx(expected).epsilon(percent / 100).margin(1e-300); }
+inline Approx within_percent(double expected, double percent) {
+  return Approx(expected).epsilon(percent / 100).margin(1e-300);
+}
 
 /// Rows of tests/published/NAME.csv.
 inline std::vector<row> published(const std::string& name) {

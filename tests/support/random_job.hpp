@@ -31,20 +31,26 @@ class job_dice {
   nlohmann::json job(bool named_core) {
     const double va = std::pow(10.0, real(0.7, 2.8));
     nlohmann::json j{{"format", "turnwright-job/1"}, {"title", "random job"}};
-    j["mains"] = {{"frequency", text(one_of<double>({50, 60}), "Hz")}, {"tolerance", text(one_of<double>({5, 6, 10}), "%")}};
+    j["mains"] = {{"frequency", text(one_of<double>({50, 60}), "Hz")},
+                  {"tolerance", text(one_of<double>({5, 6, 10}), "%")}};
     j["primary"] = primary();
     j["secondaries"] = secondaries(va);
     j["core"] = {{"steel", one_of<std::string>({"M400-50A", "M800-50A", "M-6", "M-19", "unknown", "M330-50A"})}};
     if (named_core) {
-      static const std::vector<std::string> sizes{"EI 48", "EI 60", "EI 66", "EI 78", "EI 84", "EI 96", "EI 105", "EI 120", "EI 150N", "EI 130",
-                                                  "M 74", "M 102", "EI 1 in", "EI 1-1/4 in", "EI 1-1/2 in", "EI 2 in"};
+      static const std::vector<std::string> sizes{"EI 48",   "EI 60",       "EI 66",       "EI 78",  "EI 84", "EI 96",
+                                                  "EI 105",  "EI 120",      "EI 150N",     "EI 130", "M 74",  "M 102",
+                                                  "EI 1 in", "EI 1-1/4 in", "EI 1-1/2 in", "EI 2 in"};
       j["core"]["lamination"] = one_of(sizes);
       j["core"]["stack"] = text(real(18, 75), "mm");
     }
-    if (chance(0.5)) j["former"] = {{"kind", one_of<std::string>({"layers", "bobbin"})}, {"wound", one_of<std::string>({"hand", "machine"})}};
+    if (chance(0.5))
+      j["former"] = {{"kind", one_of<std::string>({"layers", "bobbin"})},
+                     {"wound", one_of<std::string>({"hand", "machine"})}};
     if (chance(0.3)) j["wire"] = {{"system", one_of<std::string>({"metric", "awg", "swg"})}};
     if (chance(0.3)) j["limits"] = {{"temperature_rise", text(one_of<double>({40, 55, 70}), "K")}};
-    if (chance(0.4)) j["screens"] = nlohmann::json::array({{{"after", "primary"}, {"kind", one_of<std::string>({"noise", "safety"})}}});
+    if (chance(0.4))
+      j["screens"] =
+          nlohmann::json::array({{{"after", "primary"}, {"kind", one_of<std::string>({"noise", "safety"})}}});
     return j;
   }
 
@@ -56,7 +62,8 @@ class job_dice {
     if (sort == 2) return {{"taps", {"120 V"}}};
     if (sort == 3) return {{"taps", {"100 V", "110 V", "120 V", "220 V", "230 V", "240 V"}}};
     const nlohmann::json half = nlohmann::json::array({"100 V", "120 V"});
-    return {{"windings", nlohmann::json::array({half, half})}, {"on", one_of<std::string>({"240 V", "120 V", "220 V"})}};
+    return {{"windings", nlohmann::json::array({half, half})},
+            {"on", one_of<std::string>({"240 V", "120 V", "220 V"})}};
   }
 
   nlohmann::json secondaries(double va) {
@@ -70,15 +77,24 @@ class job_dice {
         if (c != ' ') tidy += c;
       }
       tidy.insert(tidy.size() - 1, " ");
-      list.push_back({{"name", "HT"}, {"voltage", tidy}, {"current", text(0.5 * va / (centre ? 2 * v : v) * 1e3, "mA")}});
+      list.push_back(
+          {{"name", "HT"}, {"voltage", tidy}, {"current", text(0.5 * va / (centre ? 2 * v : v) * 1e3, "mA")}});
       if (chance(0.6)) {
-        list.push_back({{"name", "rectifier heater"}, {"voltage", one_of<std::string>({"5 V", "6.3 V", "4 V"})},
-                        {"current", text(one_of<double>({1, 1.9, 3}), "A")}, {"floats_on", "HT"}});
+        list.push_back({{"name", "rectifier heater"},
+                        {"voltage", one_of<std::string>({"5 V", "6.3 V", "4 V"})},
+                        {"current", text(one_of<double>({1, 1.9, 3}), "A")},
+                        {"floats_on", "HT"}});
       }
-      if (chance(0.4)) list.push_back({{"name", "bias"}, {"tap_of", "HT"}, {"voltage", text(std::round(real(30, 70)), "V")}, {"current", "10 mA"}});
+      if (chance(0.4))
+        list.push_back({{"name", "bias"},
+                        {"tap_of", "HT"},
+                        {"voltage", text(std::round(real(30, 70)), "V")},
+                        {"current", "10 mA"}});
     }
-    list.push_back({{"name", "heaters"}, {"voltage", one_of<std::string>({"6.3 V", "12.6 V", "4 V"})},
-                    {"current", text(std::max(0.3, 0.4 * va / 6.3), "A")}, {"centre_tap", chance(0.5)}});
+    list.push_back({{"name", "heaters"},
+                    {"voltage", one_of<std::string>({"6.3 V", "12.6 V", "4 V"})},
+                    {"current", text(std::max(0.3, 0.4 * va / 6.3), "A")},
+                    {"centre_tap", chance(0.5)}});
     return list;
   }
 

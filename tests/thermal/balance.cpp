@@ -35,8 +35,8 @@ const std::vector<watts> usual_losses{1.3_W, 1.1_W, 0.75_W};
 }  // namespace
 
 TEST_CASE("rises agree with a field solution of a small transformer", "[reference]") {
-  // Finite-element solution of the same sections with copper coupling along the turn, mesh error 0.05 % (computed with a
-  // general-purpose solver). Eight per cent is what a network of one node for each winding should reach.
+  // Finite-element solution of the same sections with copper coupling along the turn, mesh error 0.05 % (computed with
+  // a general-purpose solver). Eight per cent is what a network of one node for each winding should reach.
   const heat_state s = heat_balance(small_coil()).solve(1.2_W, usual_losses);
   CHECK(plain(s.core) == testing::within_percent(26.07, 8));
   CHECK(plain(s.windings[0]) == testing::within_percent(34.87, 8));
@@ -75,7 +75,8 @@ TEST_CASE("more loss anywhere never cools anything", "[property]") {
 }
 
 TEST_CASE("without loss nothing warms", "[property]") {
-  for (const kelvins& k : heat_balance(small_coil()).solve(0_W, {0_W, 0_W, 0_W}).windings) CHECK(plain(k) == Approx(0).margin(1e-9));
+  for (const kelvins& k : heat_balance(small_coil()).solve(0_W, {0_W, 0_W, 0_W}).windings)
+    CHECK(plain(k) == Approx(0).margin(1e-9));
 }
 
 TEST_CASE("losses of another count than the windings are our own fault", "[refusal]") {
@@ -83,7 +84,8 @@ TEST_CASE("losses of another count than the windings are our own fault", "[refus
 }
 
 TEST_CASE("the surface rule gives its two known points", "[published][mclyman]") {
-  // Colonel Wm. T. McLyman, Transformer and Inductor Design Handbook, ch. 6, recalled: 0.03 W/cm2 about 25 K, 0.07 about 50 K.
+  // Colonel Wm. T. McLyman, Transformer and Inductor Design Handbook, ch. 6, recalled: 0.03 W/cm2 about 25 K, 0.07
+  // about 50 K.
   CHECK(plain(surface_rule(0.3_W, as<square_metres>(10e-4))) == Approx(25).margin(0.5));
   CHECK(plain(surface_rule(0.7_W, as<square_metres>(10e-4))) == Approx(50).margin(0.5));
 }

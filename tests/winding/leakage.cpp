@@ -43,7 +43,8 @@ TEST_CASE("interleaving the HT about the primary agrees with a field solution, a
   const stray_coil p = coil(4.8, 8.6, 44);
   const stray_coil halves{{{1.6_mm, 4.1_mm, 0.5}, {9.3_mm, 11.8_mm, 0.5}}, 44_mm};
   const henries split = pair_leakage(p, halves, {154_mm}, turns{545});
-  CHECK(plain(split) * 1e6 == testing::within_percent(1725, 6));  // same solution as above, its group "primary against HT in series"
+  CHECK(plain(split) * 1e6 ==
+        testing::within_percent(1725, 6));  // same solution as above, its group "primary against HT in series"
   CHECK(split < pair_leakage(p, coil(9.3, 11.8, 44), {154_mm}, turns{545}));
 }
 
@@ -54,7 +55,8 @@ TEST_CASE("leakage referred to either winding of a pair goes with the square of 
     const double x = pick(1, 4), t = pick(1, 5), gap = pick(0.1, 3), u = pick(1, 5), height = pick(15, 60);
     const stray_coil a = coil(x, x + t, height), b = coil(x + t + gap, x + t + gap + u, height * pick(0.9, 1));
     const stray_space space{as<metres>(pick(0.06, 0.2))};
-    REQUIRE(plain(pair_leakage(a, b, space, turns{500})) == Approx(plain(pair_leakage(b, a, space, turns{100})) * 25).epsilon(1e-12));
+    REQUIRE(plain(pair_leakage(a, b, space, turns{500})) ==
+            Approx(plain(pair_leakage(b, a, space, turns{100})) * 25).epsilon(1e-12));
   }
 }
 
