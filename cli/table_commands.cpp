@@ -3,8 +3,7 @@
 
 #include <turnwright/job/result.hpp>
 #include <turnwright/measure/literals.hpp>
-#include <turnwright/measure/read.hpp>
-#include <turnwright/remark/wording.hpp>
+#include <turnwright/remark/figure.hpp>
 #include <turnwright/sheet/report.hpp>
 
 #include "files.hpp"
@@ -36,10 +35,9 @@ template <class Q>
 std::optional<Q> asked(const std::optional<std::string>& text, const char* option, const char* least,
                        const char* most) {
   if (!text) return std::nullopt;
-  const reading<Q> r = read<Q>(*text);
-  if (!r.value) throw refused(wording::quantity(option, *text, r.fault));
-  const Q found = *r.value, low = *read<Q>(least).value, high = *read<Q>(most).value;
-  if (found < low || high < found) throw refused(wording::out_of_range(option, *text, least, most));
+  std::vector<remark> faults;
+  const std::optional<Q> found = read_within<Q>(*text, option, least, most, faults);
+  if (!found) throw refused(std::move(faults));
   return found;
 }
 

@@ -2,8 +2,7 @@
 /// end. Private to the job layer.
 #pragma once
 
-#include <turnwright/measure/read.hpp>
-#include <turnwright/remark/wording.hpp>
+#include <turnwright/remark/figure.hpp>
 
 #include <nlohmann/json.hpp>
 
@@ -58,17 +57,7 @@ class page {
   }
   template <class Q>
   std::optional<Q> quantity_in(const std::string& text, const std::string& where, const char* least, const char* most) {
-    const reading<Q> r = read<Q>(text);
-    if (!r.value) {
-      fault(wording::quantity(where, text, r.fault));
-      return std::nullopt;
-    }
-    const Q found = *r.value, low = *read<Q>(least).value, high = *read<Q>(most).value;
-    if (found < low || high < found) {
-      fault(wording::out_of_range(where, text, least, most));
-      return std::nullopt;
-    }
-    return found;
+    return read_within<Q>(text, where, least, most, faults_);
   }
   /// The object of a key, or nothing.
   std::optional<page> object(const std::string& key);

@@ -1,11 +1,8 @@
 #include "winding_text.hpp"
 
-#include <turnwright/measure/literals.hpp>
-#include <turnwright/remark/wording.hpp>
+#include <turnwright/remark/figure.hpp>
 
 namespace turnwright::job_detail {
-
-using namespace literals;
 
 namespace {
 
@@ -18,18 +15,8 @@ std::string without(std::string text, const std::string& tail, bool& found) {
   return text;
 }
 
-std::optional<volts> in_range(const std::string& text, const std::string& whole, const std::string& where,
-                              std::vector<remark>& faults) {
-  const reading<volts> r = read<volts>(text);
-  if (!r.value) {
-    faults.push_back(wording::quantity(where, whole, r.fault));
-    return std::nullopt;
-  }
-  if (*r.value < 0.2_V || *r.value > 5000_V) {
-    faults.push_back(wording::out_of_range(where, whole, "0.2 V", "5000 V"));
-    return std::nullopt;
-  }
-  return r.value;
+std::optional<volts> in_range(const std::string& text, const std::string& where, std::vector<remark>& faults) {
+  return read_within<volts>(text, where, "0.2 V", "5000 V", faults);
 }
 
 }  // namespace
@@ -41,7 +28,7 @@ std::optional<winding_volts> read_winding_volts(const std::string& text, const s
   const std::string figure = without(without(text, "no load", out.no_load), "on load", on_load);
   const std::size_t middle = figure.find("-0-");
   if (middle == std::string::npos) {
-    const auto v = in_range(figure, text, where, faults);
+    const auto v = in_range(figure, where, faults);
     if (!v) return std::nullopt;
     out.first = *v;
     return out;
@@ -50,9 +37,9 @@ std::optional<winding_volts> read_winding_volts(const std::string& text, const s
   const std::string second = figure.substr(middle + 3);
   const std::size_t unit = second.find_first_not_of("0123456789.");
   const std::string first = figure.substr(0, middle) + (unit == std::string::npos ? "" : second.substr(unit));
-  const auto a = in_range(first, text, where, faults);
+  const auto a = in_range(first, where, faults);
   if (!a) return std::nullopt;
-  const auto b = in_range(second, text, where, faults);
+  const auto b = in_range(second, where, faults);
   if (!b) return std::nullopt;
   out.first = *a;
   out.second = *b;

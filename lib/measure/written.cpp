@@ -150,6 +150,10 @@ std::string fixed(double x, int decimals) {
   return negative_zero ? text.substr(1) : text;
 }
 
+std::string percent(double ratio, int decimals) { return fixed(100 * ratio, decimals) + " %"; }
+
+std::string signed_percent(double ratio) { return (ratio >= 0 ? "+" : "") + percent(ratio); }
+
 std::string shortest(double x) {
   std::array<char, 64> room{};
   return {room.data(), std::to_chars(room.data(), room.data() + room.size(), x).ptr};

@@ -39,6 +39,10 @@ inline std::string shown<temperature>(const temperature& t, int digits) {
 /// A number with a fixed count of decimals, such as "12.50".
 std::string fixed(double x, int decimals);
 
+/// A ratio in per cent, such as "12.5 %"; with its sign, such as "+2.5 %".
+std::string percent(double ratio, int decimals = 1);
+std::string signed_percent(double ratio);
+
 /// The shortest text that reads back as exactly x.
 std::string shortest(double x);
 

@@ -11,10 +11,6 @@ using namespace literals;
 
 namespace {
 
-std::string percent(double ratio, int decimals = 1) { return fixed(100 * ratio, decimals) + " %"; }
-
-std::string signed_percent(double ratio) { return (ratio > 0 ? "+" : "") + percent(ratio); }
-
 void add_limits(const design& p, const std::string& cure, std::vector<check>& all) {
   for (const limit_test& t : p.made.limits) {
     check c{t.code,
@@ -34,7 +30,7 @@ void add_limits(const design& p, const std::string& cure, std::vector<check>& al
     }
     if (!t.holds) {
       c.text += no_turn ? ": not even one turn fits between the margins" : ": over by " + percent(t.excess());
-      if (t.found < t.bound) c.text = t.what + ": under by " + percent(t.excess());
+      if (t.found < t.bound && !no_turn) c.text = t.what + ": under by " + percent(t.excess());
       c.cure = cure;
     }
     all.push_back(std::move(c));

@@ -120,46 +120,46 @@ std::string named(const core_body& c) {
   return c.choice().pattern.name + " with a stack of " + shown(c.choice().stack) + " of " + c.choice().grade.name;
 }
 
-std::optional<std::string> cure_by_wire(const demand& d, const shop& s, const core_body& core) {
+// The job with something freed that it fixes of its windings: `release` does it for one, and says whether it had to.
+// Winds that; where it can be wound, the cure is what `said` says of each coil.
+std::optional<std::string> cure_by_freeing(const demand& d, const shop& s, const core_body& core,
+                                           const std::function<bool(winding_wishes&)>& release, std::string text,
+                                           const std::function<std::string(const coil_draft&)>& said) {
   demand freed = d;
-  bool fixed = freed.primary.fixed.wire.has_value() || freed.primary.fixed.strands.has_value();
-  freed.primary.fixed.wire.reset();
-  freed.primary.fixed.strands.reset();
-  for (secondary_wish& w : freed.secondaries) {
-    fixed = fixed || w.fixed.wire || w.fixed.strands;
-    w.fixed.wire.reset();
-    w.fixed.strands.reset();
-  }
+  bool had_to = release(freed.primary.fixed);
+  for (secondary_wish& w : freed.secondaries) had_to = release(w.fixed) || had_to;
+  if (!had_to) return std::nullopt;  // what is free has been tried already
   std::vector<working> unused;
-  if (!fixed) return std::nullopt;  // every gauge has been tried already
   const attempt a = wind_either_way(freed, s, core, unused);
   if (!a.windable()) return std::nullopt;
-  std::string text = "other wire:";
   for (const coil_draft& c : a.coil.coils) {
-    text += (&c == &a.coil.coils.front() ? " " : ", ") + c.role.name + " " + c.wires.front().wire.size +
-            (c.wires.front().strands > 1 ? " x " + std::to_string(c.wires.front().strands) : "");
+    text += (&c == &a.coil.coils.front() ? " " : ", ") + c.role.name + " " + said(c);
   }
   return text;
 }
 
+std::optional<std::string> cure_by_wire(const demand& d, const shop& s, const core_body& core) {
+  const auto release = [](winding_wishes& w) {
+    const bool had_to = w.wire || w.strands;
+    w.wire.reset();
+    w.strands.reset();
+    return had_to;
+  };
+  return cure_by_freeing(d, s, core, release, "other wire:", [](const coil_draft& c) {
+    const wire_pick& w = c.wires.front();
+    return (w.strands > 1 ? std::to_string(w.strands) + " x " : "") + w.wire.size;
+  });
+}
+
 std::optional<std::string> cure_by_turns(const demand& d, const shop& s, const core_body& core) {
-  demand freed = d;
-  bool fixed = freed.primary.fixed.n.has_value();
-  freed.primary.fixed.n.reset();
-  for (secondary_wish& w : freed.secondaries) {
-    fixed = fixed || w.fixed.n;
-    w.fixed.n.reset();
-  }
-  std::vector<working> unused;
-  if (!fixed) return std::nullopt;
-  const attempt a = wind_either_way(freed, s, core, unused);
-  if (!a.windable()) return std::nullopt;
-  std::string text = "other turns:";
-  for (const coil_draft& c : a.coil.coils) {
-    text +=
-        (&c == &a.coil.coils.front() ? " " : ", ") + c.role.name + " " + std::to_string(total_turns(c.laid).count());
-  }
-  return text;
+  const auto release = [](winding_wishes& w) {
+    const bool had_to = w.n.has_value();
+    w.n.reset();
+    return had_to;
+  };
+  return cure_by_freeing(d, s, core, release, "other turns:", [](const coil_draft& c) {
+    return std::to_string(total_turns(c.laid).count());
+  });
 }
 
 std::optional<std::string> cure_by_stack(const demand& d, const shop& s, const core_body& core) {

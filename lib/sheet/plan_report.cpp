@@ -12,8 +12,6 @@ namespace {
 
 std::string mm(metres l, int decimals = 1) { return fixed(plain(l) * 1e3, decimals); }
 std::string number(double x, int digits) { return shortest(rounded_to(x, digits)); }
-std::string percent(double ratio, int decimals = 1) { return fixed(100 * ratio, decimals) + " %"; }
-std::string signed_percent(double ratio) { return (ratio >= 0 ? "+" : "") + percent(ratio); }
 std::string volts_text(volts_rms v) {
   const double x = plain(v.plain());
   return fixed(x, x < 20 ? 2 : 1);
