@@ -59,12 +59,41 @@ std::string_view trimmed(std::string_view s) {
   return s;
 }
 
+// Finds the keys under "# Sources:": "#   key: what it is", going on in lines that stand further in.
+class head_reader {
+ public:
+  explicit head_reader(csv_head& head) : head_(head) {}
+
+  void take(std::string_view line) {
+    if (!line.starts_with("#   ")) {
+      inside_ = trimmed(line.substr(1)) == "Sources:";
+      return;
+    }
+    if (!inside_) return;
+    const std::string_view words = trimmed(line.substr(1));
+    const std::size_t colon = words.find(": ");
+    const bool key_line = !line.starts_with("#     ") && colon != std::string_view::npos &&
+                          words.substr(0, colon).find(' ') == std::string_view::npos;
+    if (key_line) {
+      last_ = std::string(words.substr(0, colon));
+      head_.sources[last_] = std::string(trimmed(words.substr(colon + 2)));
+    } else if (!last_.empty()) {
+      head_.sources[last_] += " " + std::string(words);
+    }
+  }
+
+ private:
+  csv_head& head_;
+  bool inside_ = false;
+  std::string last_;
+};
+
 }  // namespace
 
 std::string row::text(std::string_view column) const {
-  const auto at = std::find(columns_->begin(), columns_->end(), column);
-  if (at == columns_->end()) return {};
-  return cells_[static_cast<std::size_t>(at - columns_->begin())];
+  const auto at = std::find(head_->columns.begin(), head_->columns.end(), column);
+  if (at == head_->columns.end()) return {};
+  return cells_[static_cast<std::size_t>(at - head_->columns.begin())];
 }
 
 std::optional<double> row::number(std::string_view column) const {
@@ -112,13 +141,24 @@ std::string row::place(std::string_view column) const {
 }
 
 std::string row::source() const {
-  return the_shops_ ? text("source") + " (the shop's " + origin_ + ")" : text("source");
+  const std::string cell = text("source");
+  std::string spelled;
+  for (std::size_t from = 0; from <= cell.size();) {
+    const std::size_t to = std::min(cell.find(" + ", from), cell.size());
+    const std::string key = cell.substr(from, to - from);
+    const auto known = head_->sources.find(key);
+    spelled += (spelled.empty() ? "" : "; ") + (known == head_->sources.end() ? key : known->second);
+    from = to + 3;
+  }
+  return the_shops_ ? spelled + " (the shop's " + origin_ + ")" : spelled;
 }
 
 std::vector<row> read_csv(std::string_view text, const std::string& origin) {
   std::vector<row> rows;
   std::vector<remark> faults;
-  std::shared_ptr<const std::vector<std::string>> columns;
+  csv_head head;
+  head_reader comments(head);
+  std::shared_ptr<const csv_head> shared;
   if (text.starts_with("\xEF\xBB\xBF")) text.remove_prefix(3);
   int line_number = 0;
   while (!text.empty()) {
@@ -126,29 +166,32 @@ std::vector<row> read_csv(std::string_view text, const std::string& origin) {
     std::string_view line = text.substr(0, end);
     text.remove_prefix(std::min(end + 1, text.size()));
     ++line_number;
+    const std::string place = origin + ":" + std::to_string(line_number);
     if (line.ends_with('\r')) line.remove_suffix(1);
-    if (trimmed(line).empty() || line.starts_with('#')) continue;
+    if (trimmed(line).empty()) continue;
     if (!is_utf8(line)) {
-      faults.push_back(wording::other("bad-row", origin + ":" + std::to_string(line_number), "bytes that are no UTF-8",
-                                      "a text in UTF-8"));
+      faults.push_back(wording::other("bad-row", place, "bytes that are no UTF-8", "a text in UTF-8"));
+      continue;
+    }
+    if (line.starts_with('#')) {
+      comments.take(line);
       continue;
     }
     split_line parts = split(line);
     for (std::string& cell : parts.cells) cell = std::string(trimmed(cell));
-    if (!columns) {
-      columns = std::make_shared<const std::vector<std::string>>(std::move(parts.cells));
+    if (!shared) {
+      head.columns = std::move(parts.cells);
+      shared = std::make_shared<const csv_head>(head);
     } else if (!parts.closed) {
-      faults.push_back(wording::other("bad-row", origin + ":" + std::to_string(line_number),
-                                      "a quotation mark left open", "a row on one line"));
-    } else if (parts.cells.size() != columns->size()) {
-      faults.push_back(wording::other("bad-row", origin + ":" + std::to_string(line_number),
-                                      std::to_string(parts.cells.size()) + " cells",
-                                      std::to_string(columns->size()) + " cells, as in the header row"));
+      faults.push_back(wording::other("bad-row", place, "a quotation mark left open", "a row on one line"));
+    } else if (parts.cells.size() != head.columns.size()) {
+      faults.push_back(wording::other("bad-row", place, std::to_string(parts.cells.size()) + " cells",
+                                      std::to_string(head.columns.size()) + " cells, as in the header row"));
     } else {
-      rows.emplace_back(columns, std::move(parts.cells), origin, line_number);
+      rows.emplace_back(shared, std::move(parts.cells), origin, line_number);
     }
   }
-  if (!columns) faults.push_back(wording::missing(origin, "a header row"));
+  if (!shared) faults.push_back(wording::missing(origin, "a header row"));
   if (!faults.empty()) throw refused(std::move(faults));
   return rows;
 }

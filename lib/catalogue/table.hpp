@@ -4,6 +4,7 @@
 #include <turnwright/catalogue/standing.hpp>
 #include <turnwright/remark/remark.hpp>
 
+#include <map>
 #include <memory>
 #include <optional>
 #include <string>
@@ -12,15 +13,20 @@
 
 namespace turnwright {
 
+/// What the rows of one file share: names of the columns, and the keys that its head explains under "# Sources:".
+struct csv_head {
+  std::vector<std::string> columns;
+  std::map<std::string, std::string, std::less<>> sources;
+};
+
 /// One row. Cells are asked for by column name; every fault found so is noted with its place.
 class row {
  public:
-  row(std::shared_ptr<const std::vector<std::string>> columns, std::vector<std::string> cells, std::string origin,
-      int line)
-      : columns_(std::move(columns)), cells_(std::move(cells)), origin_(std::move(origin)), line_(line) {}
+  row(std::shared_ptr<const csv_head> head, std::vector<std::string> cells, std::string origin, int line)
+      : head_(std::move(head)), cells_(std::move(cells)), origin_(std::move(origin)), line_(line) {}
 
   /// Names of the columns.
-  const std::vector<std::string>& columns() const { return *columns_; }
+  const std::vector<std::string>& columns() const { return head_->columns; }
 
   /// The cell as text; empty where the column or the cell is.
   std::string text(std::string_view column) const;
@@ -34,13 +40,14 @@ class row {
   standing known_how() const;
   /// Where the row stands, as "file:line" or "file:line:column".
   std::string place(std::string_view column = {}) const;
-  /// Where the row's figures come from: its `source` cell and, for a row of the shop's own, its file.
+  /// Where the row's figures come from: its `source` cell with the keys that the file's head explains written out and,
+  /// for a row of the shop's own, its file.
   std::string source() const;
   /// Marks the row as one of the shop's own.
   void mark_as_the_shops() { the_shops_ = true; }
 
  private:
-  std::shared_ptr<const std::vector<std::string>> columns_;
+  std::shared_ptr<const csv_head> head_;
   std::vector<std::string> cells_;
   std::string origin_;
   int line_;

@@ -68,7 +68,7 @@ TEST_CASE("every source that a bundled row names is spelt out in the head of its
     const table& t = tables.named(name);
     std::set<std::string> keys;
     for (const row& r : t.rows) {
-      std::istringstream words(r.source());
+      std::istringstream words(r.text("source"));
       for (std::string word; words >> word;) {
         if (word != "+") keys.insert(word);
       }
@@ -173,6 +173,15 @@ TEST_CASE("one bundled row in the shop's folder replaces itself and no other", "
     const catalogue laid_over = catalogue::with_shop_rows({shop_folder("one", name + ".csv", csv)});
     CHECK(laid_over.named(name).rows.size() == t.rows.size());
   }
+}
+
+TEST_CASE("a row's source is written out as its table's head explains it") {
+  const auto rows = read_csv(
+      "# T\n# Sources:\n#   bs: British Standard 1,\n#     second line\n#   own: own meter\n# standing: "
+      "x\na,source\n1,bs + own\n2,none\n",
+      "t.csv");
+  CHECK(rows.at(0).source() == "British Standard 1, second line; own meter");
+  CHECK(rows.at(1).source() == "none");
 }
 
 TEST_CASE("a row of the shop names its file as its source") {
