@@ -50,7 +50,8 @@ std::vector<core_body> cores_where(const demand& d, const shop& s,
 bool hopelessly_small(const demand& d, const shop& s, const core_body& core) {
   const teslas b = d.limits.flux_density.value_or(core.choice().grade.flux_nominal);
   const double per_volt = turns_for(volts_rms{1_V}, d.mains.frequency, b, core.net_area());
-  const double copper_m2 = 2 * plain(rating_of(d)) * per_volt / 4.5e6;
+  const double densest = plain(d.limits.current_density.value_or(usual_highest_density));
+  const double copper_m2 = 2 * plain(rating_of(d)) * per_volt / std::max(densest, plain(usual_highest_density));
   const former room = former_for(d.former, s.patterns, core.choice().pattern, core.choice().stack);
   return copper_m2 > 0.75 * plain(room.winding_width) * plain(room.winding_height);
 }
