@@ -59,7 +59,6 @@ const std::vector<std::pair<std::string, std::string>> later_commands{
     {"rewind", "bench measurements of an unknown transformer to a job that rebuilds it"},
     {"convert", "an existing transformer on another mains"},
     {"proof", "bench readings against the plan"},
-    {"valve", "the table of valves"},
 };
 
 void show(const refused& why, std::ostream& aside) {
@@ -96,6 +95,8 @@ void declare(everything& e) {
   CLI::App* steel = add_table(e.app, e.shared, e.table, "steel", "the steels", e.chosen);
   steel->add_option("--at", e.table.at, "flux density to give field and loss at, such as \"1.37 T\"");
   steel->add_option("--frequency", e.table.frequency, "frequency for the loss; 50 Hz if absent");
+  CLI::App* valve = add_table(e.app, e.shared, e.table, "valve", "rectifiers and the heaters of valves", e.chosen);
+  valve->add_flag("--standing", e.table.standing, "add the standing of each figure");
   for (const auto& [name, about] : later_commands) {
     CLI::App* c = e.app.add_subcommand(name, about + " (not yet)");
     c->allow_extras();
@@ -115,6 +116,7 @@ status carry_out(everything& e, std::ostream& out, std::ostream& aside) {
   if (name == "plan") return run_plan(e.plan, tables, s, out, aside);
   if (name == "wire") return run_wire(e.table, tables, s, out);
   if (name == "core") return run_core(e.table, tables, s, out);
+  if (name == "valve") return run_valve(e.table, tables, s, out);
   return run_steel(e.table, tables, s, out);
 }
 

@@ -34,6 +34,7 @@ struct plan_order {
 struct table_order {
   std::optional<std::string> name;
   std::optional<std::string> at, frequency;  ///< of a steel
+  bool standing = false;                     ///< of each figure of a valve
   std::string csv;                           ///< name of a table, "." for the command's own; empty: not asked for
   output_wish output;
 };
@@ -44,6 +45,7 @@ status run_plan(const plan_order& order, const catalogue& tables, const shop& s,
 status run_wire(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out);
 status run_core(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out);
 status run_steel(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out);
+status run_valve(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out);
 
 /// Reads the command line and carries it out; never throws.
 status serve(int argc, const char* const* argv, std::ostream& out, std::ostream& aside);

@@ -24,6 +24,12 @@ struct steel_point {
 /// A steel as "turnwright-steel/1", with `at` where a point is asked for.
 std::string json_of(const steel& s, const std::optional<steel_point>& at);
 
+/// A rectifier or an amplifying valve as "turnwright-valve/1"; `each_standing` adds that of each figure.
+std::string json_of(const rectifier_type& t, bool each_standing);
+std::string json_of(const amplifying_valve& v, const valve_book& book, bool each_standing);
+/// All valves and silicon by name, as "turnwright-list/1".
+std::string json_of_valves(const valve_book& book);
+
 /// A list of table rows by name, as "turnwright-list/1".
 std::string json_of_names(const std::string& what, const std::vector<std::string>& names);
 

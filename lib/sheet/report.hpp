@@ -20,9 +20,14 @@ std::string report_of(const lamination& l);
 /// A steel with its curves; with `flux_density` the figures at that point alone.
 std::string report_of(const steel& s, const std::optional<teslas>& flux_density, hertz frequency);
 
+/// A rectifier or an amplifying valve with all that is known of it; `each_standing` adds the standing of each figure.
+std::string report_of(const rectifier_type& t, bool each_standing);
+std::string report_of(const amplifying_valve& v, const valve_book& book, bool each_standing);
+
 /// The whole tables, a line each.
 std::string list_of_wires(const shop& s);
 std::string list_of_cores(const shop& s);
 std::string list_of_steels(const shop& s);
+std::string list_of_valves(const shop& s);
 
 }  // namespace turnwright
