@@ -62,6 +62,7 @@ void add_law(figure_page& page, const rectifier_type& t) {
     give("law_drop_V", plain(line.drop));
     if (plain(line.slope) > 0) give("law_resistance_ohm", plain(line.slope));
   }
+  page.out["law_standing"] = word_of(t.law_known_how);
 }
 
 void add_least_resistances(figure_page& page, const rectifier_type& t) {

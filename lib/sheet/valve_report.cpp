@@ -61,7 +61,8 @@ std::string law_text(const rectifier_type& t) {
   if (const auto* valve = std::get_if<three_halves_law>(&*t.law))
     return "I = K V^1.5, K " + shown(valve->each_anode, 4) + " each anode";
   const auto& line = std::get<straight_law>(*t.law);
-  return text_of(line.drop) + (plain(line.slope) > 0 ? " + " + text_of(line.slope) : " at any current");
+  const ohms slope = as<ohms>(rounded_to(plain(line.slope), 3));
+  return text_of(line.drop) + (plain(slope) > 0 ? " + " + text_of(slope) : " at any current");
 }
 
 std::string resistance_text(const rectifier_type& t) {
@@ -97,8 +98,8 @@ std::string foot(const std::string& note, standing known_how, const std::string&
 }
 
 std::string stages_text(const amplifying_valve& v, const valve_book& book) {
-  text_table t({"class", "<valves", "anode V", "screen V", "idle mA", "full mA", "W out", "load ohm", "<how",
-                "<standing", "<trust"});
+  text_table t(
+      {"class", "<of", "anode V", "screen V", "idle mA", "full mA", "W out", "load ohm", "<how", "<standing, trust"});
   const auto si = [](const auto& value) { return value ? number(plain(*value), 4) : std::string(); };
   const auto of_stated = [](const auto& value) { return value ? number(plain(value->plain()), 4) : std::string(); };
   const auto both = [](const auto& anode, const auto& screen) {
@@ -111,7 +112,7 @@ std::string stages_text(const amplifying_valve& v, const valve_book& book) {
     any = true;
     t.add({s.operation, std::to_string(s.valves), of_stated(s.anode_volts), of_stated(s.screen_volts),
            both(s.anode_idle, s.screen_idle), both(s.anode_full, s.screen_full), si(s.power), si(s.load), s.how,
-           std::string(word_of(s.known_how)), std::string(word_of(s.trust))});
+           std::string(word_of(s.known_how)) + ", " + std::string(word_of(s.trust))});
   }
   return any ? "output stages (mA: anode + screen, of all valves of the stage)\n" + t.text() : "";
 }
@@ -167,8 +168,9 @@ std::string report_of(const rectifier_type& t, bool each_standing) {
   l.add("heater",
         {l.said(t.heater_volts), l.said(t.heater_current),
          l.said(t.heater_cathode, "", " at most of cathode over heater"), l.said(t.warm_up, "", " to warm up")});
-  l.add("drop", {t.law ? l.marked(law_text(t), t.law_known_how, t.law_weak) : law_text(t),
-                 l.said(t.drop, valve ? "printed " : "greatest ", t.drop_at ? " at " + text_of(*t.drop_at) : "")});
+  l.add("drop",
+        {t.law ? l.marked((valve ? "" : "reckoned as ") + law_text(t), t.law_known_how, t.law_weak) : law_text(t),
+         l.said(t.drop, valve ? "printed " : "greatest ", t.drop_at ? " at " + text_of(*t.drop_at) : "")});
   l.add("volts", {l.said(t.capacitor_input, "", " r.m.s. each anode with capacitor input"),
                   l.said(t.choke_input, "", " r.m.s. with choke input"), l.said(t.peak_inverse, "", " peak inverse")});
   l.add("current", {l.said(t.direct_current, "",

@@ -77,7 +77,7 @@ struct rectifier_type {
   known_figure<seconds> warm_up;
   std::string package;
   std::string note;
-  standing known_how = standing::estimate;  ///< weakest of all figures
+  standing known_how = standing::estimate;  ///< weakest of the figures of the table; the law has its own
   std::string source;
 };
 

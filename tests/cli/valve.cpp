@@ -100,6 +100,7 @@ TEST_CASE("what is not known of a valve is absent", "[cli]") {
 TEST_CASE("silicon is given by type and as such", "[cli]") {
   CHECK(valve("silicon")["law_drop_V"] == 0.75);
   CHECK(valve("silicon")["law_resistance_ohm"] == 0.3);
+  CHECK(valve("1N4007")["law_standing"] == "estimate");
   CHECK(valve("1N4007")["peak_inverse_V"] == 1000.0);
   CHECK(valve("b380c800")["kind"] == "silicon bridge");
 }
