@@ -98,9 +98,8 @@ std::string foot(const std::string& note, standing known_how, const std::string&
 }
 
 std::string stages_text(const amplifying_valve& v, const valve_book& book) {
-  text_table t(
-      {"class", "<of", "anode V", "screen V", "idle mA", "full mA", "W out", "load ohm", "<how", "<standing, trust"});
-  const auto si = [](const auto& value) { return value ? number(plain(*value), 4) : std::string(); };
+  text_table t({"class", "<of", "anode V", "screen V", "idle mA", "full mA", "W out", "load ohm", "<standing, trust"});
+  const auto si = [](const auto& value) { return value ? number(plain(*value), 5) : std::string(); };
   const auto of_stated = [](const auto& value) { return value ? number(plain(value->plain()), 4) : std::string(); };
   const auto both = [](const auto& anode, const auto& screen) {
     if (!anode) return std::string();
@@ -110,9 +109,9 @@ std::string stages_text(const amplifying_valve& v, const valve_book& book) {
   for (const output_stage& s : book.stages()) {
     if (name_key(s.type) != name_key(v.name)) continue;
     any = true;
-    t.add({s.operation, std::to_string(s.valves), of_stated(s.anode_volts), of_stated(s.screen_volts),
-           both(s.anode_idle, s.screen_idle), both(s.anode_full, s.screen_full), si(s.power), si(s.load), s.how,
-           std::string(word_of(s.known_how)) + ", " + std::string(word_of(s.trust))});
+    t.add({s.operation + (s.how.empty() ? "" : ", " + s.how), std::to_string(s.valves), of_stated(s.anode_volts),
+           of_stated(s.screen_volts), both(s.anode_idle, s.screen_idle), both(s.anode_full, s.screen_full), si(s.power),
+           si(s.load), std::string(word_of(s.known_how)) + ", " + std::string(word_of(s.trust))});
   }
   return any ? "output stages (mA: anode + screen, of all valves of the stage)\n" + t.text() : "";
 }
