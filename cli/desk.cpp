@@ -42,6 +42,23 @@ void add_plan(CLI::App& app, shared_options& shared, plan_order& order, const CL
   c->callback([c, &chosen] { chosen = c; });
 }
 
+void add_supply(CLI::App& app, shared_options& shared, supply_order& order, const CLI::App*& chosen) {
+  CLI::App* c = app.add_subcommand("supply", "rectifiers, smoothing and loads behind a known or a planned transformer");
+  c->add_option("JOB", order.job, "job file, or - for standard input; without a section \"known\" it is planned first")
+      ->required();
+  c->add_option("--mains", order.mains, "what if: other volts at the wall, such as \"253 V\"");
+  const auto several = [&](const char* name, std::vector<std::string>& list, const char* about) {
+    c->add_option(name, list, about)->take_all()->expected(1);
+  };
+  several("--rectifier", order.rectifiers, "what if: another rectifier, such as \"HT=silicon\"");
+  several("--reservoir", order.reservoirs, "what if: another capacitor at the first node, such as \"HT=47 uF\"");
+  several("--load", order.loads, "what if: another load at a node, such as \"HT/A=120 mA\"");
+  c->add_option("--waveform", order.waveform, "one cycle of every rail as a drawing, in SVG");
+  c->add_flag("--workings", order.workings, "show residuals");
+  add_shared(*c, shared);
+  c->callback([c, &chosen] { chosen = c; });
+}
+
 CLI::App* add_table(CLI::App& app, shared_options& shared, table_order& order, const std::string& name,
                     const std::string& about, const CLI::App*& chosen) {
   CLI::App* c = app.add_subcommand(name, about);
@@ -55,11 +72,9 @@ CLI::App* add_table(CLI::App& app, shared_options& shared, table_order& order, c
 
 const std::vector<std::pair<std::string, std::string>> later_commands{
     {"survey", "plan every workable core and rank them"},
-    {"supply", "rectifiers, smoothing and loads"},
     {"rewind", "bench measurements of an unknown transformer to a job that rebuilds it"},
     {"convert", "an existing transformer on another mains"},
     {"proof", "bench readings against the plan"},
-    {"valve", "the table of valves"},
 };
 
 void show(const refused& why, std::ostream& aside) {
@@ -79,6 +94,7 @@ struct everything {
   CLI::App app{"Plans the winding of mains transformers for valve amplifiers."};
   shared_options shared;
   plan_order plan;
+  supply_order supply;
   table_order table;
   const CLI::App* chosen = nullptr;
   std::string later;
@@ -90,12 +106,15 @@ void declare(everything& e) {
   e.app.name("turnwright");
   e.app.footer("Mains and HT kill: winding, wiring and testing are for trained people, under the local code.");
   add_plan(e.app, e.shared, e.plan, e.chosen);
+  add_supply(e.app, e.shared, e.supply, e.chosen);
   add_table(e.app, e.shared, e.table, "wire",
             "the wire tables: a size, its figures and its neighbours in other systems", e.chosen);
   add_table(e.app, e.shared, e.table, "core", "the laminations", e.chosen);
   CLI::App* steel = add_table(e.app, e.shared, e.table, "steel", "the steels", e.chosen);
   steel->add_option("--at", e.table.at, "flux density to give field and loss at, such as \"1.37 T\"");
   steel->add_option("--frequency", e.table.frequency, "frequency for the loss; 50 Hz if absent");
+  CLI::App* valve = add_table(e.app, e.shared, e.table, "valve", "rectifiers and the heaters of valves", e.chosen);
+  valve->add_flag("--standing", e.table.standing, "add the standing of each figure");
   for (const auto& [name, about] : later_commands) {
     CLI::App* c = e.app.add_subcommand(name, about + " (not yet)");
     c->allow_extras();
@@ -106,15 +125,17 @@ void declare(everything& e) {
 status carry_out(everything& e, std::ostream& out, std::ostream& aside) {
   if (!e.later.empty()) throw refused(wording::not_yet(e.later, "a command that is planned but not built"));
   if (!e.shared.json.empty()) e.shared.output.json = e.shared.json;
-  e.plan.output = e.table.output = e.shared.output;
+  e.plan.output = e.supply.output = e.table.output = e.shared.output;
   std::vector<std::filesystem::path> folders = table_folders_of_environment();
   folders.insert(folders.end(), e.shared.folders.begin(), e.shared.folders.end());
   const catalogue tables = catalogue::with_shop_rows(folders);
   const shop s(tables);
   const std::string name = e.chosen->get_name();
   if (name == "plan") return run_plan(e.plan, tables, s, out, aside);
+  if (name == "supply") return run_supply(e.supply, tables, s, out);
   if (name == "wire") return run_wire(e.table, tables, s, out);
   if (name == "core") return run_core(e.table, tables, s, out);
+  if (name == "valve") return run_valve(e.table, tables, s, out);
   return run_steel(e.table, tables, s, out);
 }
 

@@ -31,9 +31,21 @@ struct plan_order {
   output_wish output;
 };
 
+struct supply_order {
+  std::optional<std::string> job;       ///< a file, or "-" for standard input
+  std::optional<std::string> mains;     ///< other volts at the wall
+  std::vector<std::string> rectifiers;  ///< "HT=GZ34", or "silicon" for the first rail
+  std::vector<std::string> reservoirs;  ///< "HT=47 uF"
+  std::vector<std::string> loads;       ///< "HT/A=120 mA"
+  std::optional<std::string> waveform;  ///< file for the drawing
+  bool workings = false;
+  output_wish output;
+};
+
 struct table_order {
   std::optional<std::string> name;
   std::optional<std::string> at, frequency;  ///< of a steel
+  bool standing = false;                     ///< of each figure of a valve
   std::string csv;                           ///< name of a table, "." for the command's own; empty: not asked for
   output_wish output;
 };
@@ -41,9 +53,11 @@ struct table_order {
 /// Each returns the exit status; results go to `out`, everything else to `aside`. They throw `refused` for wrong input.
 status run_plan(const plan_order& order, const catalogue& tables, const shop& s, std::ostream& out,
                 std::ostream& aside);
+status run_supply(const supply_order& order, const catalogue& tables, const shop& s, std::ostream& out);
 status run_wire(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out);
 status run_core(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out);
 status run_steel(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out);
+status run_valve(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out);
 
 /// Reads the command line and carries it out; never throws.
 status serve(int argc, const char* const* argv, std::ostream& out, std::ostream& aside);

@@ -15,6 +15,7 @@ namespace {
 
 struct job_text {
   std::string text, origin;
+  std::vector<std::string> kind_left_open;
 };
 
 job_text text_of(const plan_order& order) {
@@ -26,8 +27,9 @@ job_text text_of(const plan_order& order) {
     throw refused(wording::missing("plan", "a job file, - for standard input, or --mains and --winding",
                                    "turnwright plan --help shows both"));
   }
-  if (order.job) return {read_whole(*order.job), spoken(*order.job)};
-  return {job_of({order.mains, order.windings}), "command line"};
+  if (order.job) return {read_whole(*order.job), spoken(*order.job), {}};
+  written_job w = job_of({order.mains, order.windings});
+  return {std::move(w.text), "command line", std::move(w.kind_left_open)};
 }
 
 void check_codes_of(const plan_order& order) {
@@ -56,6 +58,10 @@ status run_plan(const plan_order& order, const catalogue& tables, const shop& s,
   const job_text job = text_of(order);
   demand d = read_job(job.text, job.origin, s, tables);
   d.accepted = order.accept;
+  for (secondary_wish& w : d.secondaries) {
+    const auto& open = job.kind_left_open;
+    w.kind_left_open = std::find(open.begin(), open.end(), w.name) != open.end();
+  }
   const design p = plan(d, s);
   const std::string json = order.output.json ? json_of(p) : "";
   if (order.write_job) write_whole(*order.write_job, job.text, order.output.force);

@@ -87,4 +87,20 @@ status run_steel(const table_order& order, const catalogue& tables, const shop& 
   return done;
 }
 
+status run_valve(const table_order& order, const catalogue& tables, const shop& s, std::ostream& out) {
+  if (gave_csv(order, tables, "rectifiers", out)) return done;
+  if (!order.name) {
+    deliver(order.output, list_of_valves(s), json_of_valves(s.valves), out);
+    return done;
+  }
+  const found_valve found = s.valves.named(*order.name, "valve");
+  if (found.rectifier) {
+    deliver(order.output, report_of(*found.rectifier, order.standing), json_of(*found.rectifier, order.standing), out);
+  } else {
+    deliver(order.output, report_of(*found.amplifier, s.valves, order.standing),
+            json_of(*found.amplifier, s.valves, order.standing), out);
+  }
+  return done;
+}
+
 }  // namespace turnwright::cli

@@ -72,6 +72,8 @@ void check_columns(const table& bundled, const std::vector<row>& shop_rows, cons
 // Rows of one key belong together in these; in all others the first column is the name.
 std::string key_column_of(std::string_view table_name) {
   if (table_name == "laminations" || table_name == "steels") return "name";
+  if (table_name.starts_with("rectifier") || table_name == "diodes" || table_name == "valves") return "type";
+  if (table_name == "output_stages") return "type";
   if (table_name == "stacks" || table_name == "formers") return "lamination";
   if (table_name == "steel_magnetisation" || table_name == "steel_loss") return "curve";
   if (table_name == "mains") return "region";

@@ -61,6 +61,10 @@ class page {
   }
   /// The object of a key, or nothing.
   std::optional<page> object(const std::string& key);
+  /// A page of another node, whose faults go to the same list.
+  page at(const json& node, std::string where) const { return page(node, std::move(where), faults_); }
+  /// The place as a JSON pointer, without the file.
+  std::string pointer() const { return where_.substr(where_.rfind(' ') + 1); }
   /// Calls for each element of a list.
   void each(const std::string& key, const std::function<void(const json&, const std::string& where)>& visit);
 

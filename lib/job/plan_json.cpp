@@ -1,6 +1,7 @@
 #include <turnwright/job/result.hpp>
 
 #include "figures_json.hpp"
+#include "rails_json.hpp"
 
 namespace turnwright {
 
@@ -104,8 +105,9 @@ json winding_json(const planned_winding& w) {
   j["resistance_hot_ohm"] = figure(w.resistance_hot);
   j["voltage_no_load_V"] = figure(w.no_load);
   j["voltage_on_load_V"] = figure(w.on_load);
-  if (!w.primary) j["voltage_resistive_V"] = figure(w.on_load);  // the load is a resistance already
+  if (!w.primary) j["voltage_resistive_V"] = figure(w.on_load_resistive);
   j["current_A"] = figure(w.current);
+  if (plain(w.current_dc.plain()) != 0) j["current_dc_A"] = figure(w.current_dc);
   j["current_density_A_per_mm2"] = in_a_per_mm2(w.density);
   if (!w.tap_of) j["loss_W"] = figure(w.loss);
   j["apparent_power_VA"] = figure(w.apparent);
@@ -189,12 +191,6 @@ json tests_json(const design& p) {
   return list;
 }
 
-json check_json(const check& c) {
-  json j{{"code", c.code}, {"level", word_of(c.weight)}, {"text", c.text}, {"found", c.found}, {"bound", c.bound}};
-  if (!c.cure.empty()) j["cure"] = c.cure;
-  return j;
-}
-
 json materials_json(const design& p) {
   json list = json::array();
   for (const material& m : p.materials) {
@@ -223,9 +219,7 @@ void add_lists(json& j, const design& p) {
   j["window"] = window_json(p);
   j["settings"] = json::array();
   for (const planned_setting& s : p.settings) j["settings"].push_back(setting_json(s));
-  j["states"] = json::array();
-  for (const planned_state& s : p.states)
-    j["states"].push_back({{"load", s.load}, {"mains", s.mains}, {"volts", volts_json(s.on_load)}});
+  add_rails(j, p.supply);
 }
 
 void add_papers(json& j, const design& p) {

@@ -2,6 +2,7 @@
 #pragma once
 
 #include <turnwright/job/job.hpp>
+#include <turnwright/valve/valve_list.hpp>
 
 #include "page.hpp"
 
@@ -13,6 +14,8 @@ struct reading_desk {
   const catalogue& tables;
   demand& out;
   std::vector<remark>& faults;
+  std::vector<valve_count> valves = {};          ///< the job's list
+  std::optional<ht_current_guess> draws = {};    ///< what they draw, roughly
 
   /// Notes a default that was filled in.
   void assume(std::string path, std::string value, std::string why) {
@@ -20,6 +23,27 @@ struct reading_desk {
   }
 };
 
+/// How far the mains may lie from nominal, as ratios.
+struct tolerance {
+  double over, under;
+};
+/// The section `mains` as far as it does not hang on the primary.
+struct mains_read {
+  std::optional<volts> wall;
+  std::optional<tolerance> band;
+  std::optional<ohms> source;
+  bool has_band = false;
+};
+mains_read read_mains(reading_desk& desk, page& root);
+/// The band of the mains into the demand, that of the usual supply where the job is silent.
+void settle_band(reading_desk& desk, const mains_read& read, volts nominal);
+
+/// Format and title of a job.
+void read_head(reading_desk& desk, page& root);
+/// Parts of the contract that this version does not do.
+void refuse_later_parts(page& root);
+
+void read_valves(reading_desk& desk, page& root);
 void read_mains_and_primary(reading_desk& desk, page& root);
 void read_secondaries(reading_desk& desk, page& root);
 void read_screens_and_order(reading_desk& desk, page& root);

@@ -53,11 +53,13 @@ ending read_ending(const std::vector<std::string>& words, std::size_t at, const 
       faults.push_back(wording::other("unknown-word", where, wording::quoted(w),
                                       "after the current only: rms, dc, ct or a rectifier"));
   }
+  if (e.rms && !e.rectifier.empty())
+    faults.push_back(wording::other("either-or", where, "a rectifier behind an r.m.s. current", "dc behind the current, or no rectifier"));
   if (e.dc && e.rms) faults.push_back(wording::other("either-or", where, "both dc and rms", "one of them"));
   return e;
 }
 
-std::optional<json> winding_of(const std::string& text, std::vector<remark>& faults) {
+std::optional<json> winding_of(const std::string& text, written_job& out, std::vector<remark>& faults) {
   const std::string where = "--winding " + wording::quoted(text);
   const std::size_t colon = text.find(':');
   if (colon == std::string::npos || colon == 0) {
@@ -79,10 +81,11 @@ std::optional<json> winding_of(const std::string& text, std::vector<remark>& fau
   const ending e = read_ending(words, at, where, faults);
   if (!v || !a.value) return std::nullopt;
   // With neither word: rms up to 50 V; above, dc, since that is what the trade means.
-  const bool dc = e.dc || (!e.rms && v->first > 50_V);
+  const bool dc = e.dc || (!e.rms && (v->first > 50_V || !e.rectifier.empty()));
   json w{{"name", text.substr(0, colon)}, {"voltage", figure}};
+  if (dc && !e.dc) out.kind_left_open.push_back(text.substr(0, colon));
   if (e.centre_tap) w["centre_tap"] = true;
-  if (dc || !e.rectifier.empty()) {
+  if (dc) {
     w["dc_current"] = current;
     w["circuit"] = v->second ? "full-wave centre-tap" : "bridge";
     if (!e.rectifier.empty()) w["rectifier"] = e.rectifier;
@@ -94,7 +97,8 @@ std::optional<json> winding_of(const std::string& text, std::vector<remark>& fau
 
 }  // namespace
 
-std::string job_of(const short_form& s) {
+written_job job_of(const short_form& s) {
+  written_job out;
   std::vector<remark> faults;
   json job{{"format", "turnwright-job/1"}, {"title", "Job from the command line"}};
   const auto words = words_of_text(s.mains);
@@ -109,12 +113,13 @@ std::string job_of(const short_form& s) {
   job["primary"] = {{"taps", json::array({wall})}};
   job["secondaries"] = json::array();
   for (const std::string& text : s.windings) {
-    if (const auto w = winding_of(text, faults)) job["secondaries"].push_back(*w);
+    if (const auto w = winding_of(text, out, faults)) job["secondaries"].push_back(*w);
   }
   if (s.windings.empty())
     faults.push_back(wording::missing("--winding", "at least one winding, such as \"heaters: 6.3 V 4 A ct\""));
   if (!faults.empty()) throw refused(std::move(faults));
-  return job.dump(2) + "\n";
+  out.text = job.dump(2) + "\n";
+  return out;
 }
 
 }  // namespace turnwright

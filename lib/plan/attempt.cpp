@@ -2,6 +2,7 @@
 
 #include <algorithm>
 #include <cmath>
+#include <stdexcept>
 
 #include <turnwright/measure/literals.hpp>
 #include <turnwright/measure/written.hpp>
@@ -20,15 +21,65 @@ std::vector<load_ratio> first_guess(const demand& d) {
   return all;
 }
 
+// Number of a secondary's rail among all rails of a solved network.
+std::size_t rail_number(const demand& d, std::size_t secondary) {
+  std::size_t number = 0;
+  for (std::size_t i = 0; i < secondary; ++i) number += d.secondaries[i].rail.has_value();
+  return number;
+}
+
+// Volts found at the node that a winding's rail aims at.
+volts at_target(const demand& d, std::size_t secondary, const running& r) {
+  const rail_wish& wish = *d.secondaries[secondary].rail;
+  for (std::size_t n = 0; n < wish.nodes.size(); ++n) {
+    if (wish.nodes[n].name == wish.target->node)
+      return r.electric.rails[rail_number(d, secondary)].nodes[n].mean.plain();
+  }
+  throw std::logic_error("no such node");
+}
+
+bool has_target(const secondary_wish& w) { return w.rail && w.rail->target; }
+
 std::vector<load_ratio> ratios_of(const demand& d, const draft& f, const running& r) {
   std::vector<load_ratio> all(d.secondaries.size());
   const auto ports = ports_of(d, f);
   for (std::size_t k = 0; k < ports.size(); ++k) {
-    if (d.secondaries[ports[k].secondary].no_load) continue;
+    const secondary_wish& w = d.secondaries[ports[k].secondary];
+    if (w.no_load) continue;
+    const volts open = r.electric.ports[k].no_load.plain();
+    double found = plain(r.electric.ports[k].on_load.plain()) / plain(open);
+    if (has_target(w)) {
+      // Rail volts rise with the winding's, less a part lost in rectifier and chain: some 8 % of them for a start, which
+      // only sets how fast the rounds close in.
+      const double wanted = plain(w.rail->target->at.plain()), lost = 0.08 * wanted;
+      const double there = std::max(plain(at_target(d, ports[k].secondary, r)), 0.2 * wanted);
+      const volts needed = open * ((wanted + lost) / (there + lost));
+      found = plain(ports[k].half == 1 ? *w.second_half : w.voltage) / plain(needed);
+      (ports[k].half == 0 ? all[ports[k].secondary].first : all[ports[k].secondary].second) = found;
+      continue;
+    }
     // Where half the volts are lost the core is hopeless; more turns would only lose more.
-    const double ratio =
-        std::max(0.5, plain(r.electric.ports[k].on_load.plain()) / plain(r.electric.ports[k].no_load.plain()));
-    (ports[k].half == 0 ? all[ports[k].secondary].first : all[ports[k].secondary].second) = ratio;
+    (ports[k].half == 0 ? all[ports[k].secondary].first : all[ports[k].secondary].second) = std::max(0.5, found);
+  }
+  return all;
+}
+
+// Currents that size the secondaries: the job's own, and behind or beside a rectifier what the solver found.
+std::vector<amperes> currents_of(const demand& d, const draft& f, const running& r) {
+  std::vector<amperes> all = currents_of_job(d);
+  const auto ports = ports_of(d, f);
+  for (std::size_t i = 0; i < d.secondaries.size(); ++i) {
+    const bool rectified_tap = std::any_of(d.secondaries.begin(), d.secondaries.end(), [&](const secondary_wish& t) {
+      return t.tap_of == d.secondaries[i].name && t.rail;
+    });
+    if (!d.secondaries[i].rail && !rectified_tap) continue;
+    amperes most = 0_A;
+    for (std::size_t k = 0; k < ports.size(); ++k) {
+      const bool own = ports[k].secondary == i, tap = ports[k].inside && ports[*ports[k].inside].secondary == i;
+      if (own) most = std::max(most, r.electric.ports[k].current.plain());
+      if (own || tap) most = std::max(most, r.electric.shared_current[k].plain());
+    }
+    all[i] = most;
   }
   return all;
 }
@@ -38,6 +89,11 @@ double score_of(const demand& d, const draft& f, const running& r) {
   const auto ports = ports_of(d, f);
   for (std::size_t k = 0; k < ports.size(); ++k) {
     const secondary_wish& w = d.secondaries[ports[k].secondary];
+    if (has_target(w)) {
+      const double found = plain(at_target(d, ports[k].secondary, r)) / plain(w.rail->target->at.plain());
+      worst = std::max(worst, volts_off(w, found));
+      continue;
+    }
     const supply::port_state& s = r.electric.ports[k];
     const double wanted = plain(ports[k].half == 1 ? *w.second_half : w.voltage);
     worst = std::max(worst, volts_off(w, plain((w.no_load ? s.no_load : s.on_load).plain()) / wanted));
@@ -68,6 +124,7 @@ attempt settle(const demand& d, const shop& s, const core_body& core, const flux
   constexpr int free_rounds = 3, most_rounds = 12;
   std::vector<load_ratio> ratios = first_guess(d);
   std::vector<double> weights(coils_of(d).size(), 1.0);
+  std::vector<amperes> amps = currents_of_job(d);
   amperes line = as<amperes>(1.15 * plain(rating_of(d)) / plain(d.primary.on));
   const selector_position at = nominal_position(d.primary);
   std::vector<settled_round> seen;
@@ -78,7 +135,7 @@ attempt settle(const demand& d, const shop& s, const core_body& core, const flux
     const turn_set n =
         held ? choose_secondaries(d, seen.back().f.n.primary, ratios) : choose_turns(d, core, flux, ratios);
     const wire_set wires =
-        pick_wires(d, s, core.choice().pattern.tongue, sizing_currents(d, line, stepped), density, weights);
+        pick_wires(d, s, core.choice().pattern.tongue, sizing_currents(d, line, amps, stepped), density, weights);
     const auto again = std::find_if(seen.begin(), seen.end(),
                                     [&](const settled_round& o) { return o.f.n == n && same_wires(o.wires, wires); });
     if (again != seen.end()) {
@@ -92,6 +149,7 @@ attempt settle(const demand& d, const shop& s, const core_body& core, const flux
     if (!held) {
       line = r.electric.primary_current.plain();
       weights = density_weights(f);
+      amps = currents_of(d, f, r);
     }
     const double score = score_of(d, f, r);
     seen.push_back({std::move(f), std::move(r), wires, score});

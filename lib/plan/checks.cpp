@@ -42,6 +42,7 @@ void add_volts(const design& p, const std::string& cure, std::vector<check>& all
     if (w.screen || w.primary) continue;
     const auto wish = std::find_if(p.wanted.secondaries.begin(), p.wanted.secondaries.end(),
                                    [&](const auto& s) { return s.name == w.name; });
+    if (wish->rail && wish->rail->target) continue;  // the rail's own check says it
     const bool holds = volts_off(*wish, 1 + *w.error_ratio) <= 1 + 1e-9;
     const bool heater = is_heater(*wish);
     check c{heater ? "heater-turns" : "ht-volts",
@@ -57,12 +58,25 @@ void add_volts(const design& p, const std::string& cure, std::vector<check>& all
   }
 }
 
+// Amperes that the job calls neither direct nor r.m.s.
+void add_current_kinds(const design& p, std::vector<check>& all) {
+  for (const secondary_wish& w : p.wanted.secondaries) {
+    if (!w.kind_left_open) continue;
+    all.push_back({"current-kind", level::caution,
+                   "the current of " + w.name + " is called neither dc nor rms; " +
+                       (w.rail ? "over 50 V the trade means the direct current of the load, and so it was taken"
+                               : "up to 50 V the r.m.s. current in the winding is meant, and so it was taken"),
+                   "no word", "dc or rms behind the current", "write dc or rms"});
+  }
+}
+
 void add_heaters_over_mains(const design& p, std::vector<check>& all) {
   for (const secondary_wish& w : p.wanted.secondaries) {
     if (!is_heater(w)) continue;
     double worst = 0;
-    for (const planned_state& s : p.states) {
-      for (const auto& [name, v] : s.on_load) {
+    for (const supplied_state& s : p.supply.states) {
+      if (s.load != load_state::full) continue;
+      for (const auto& [name, v] : s.windings) {
         const double off = plain(v.plain()) / plain(w.voltage) - 1;
         if (name == w.name && std::abs(off) > std::abs(worst)) worst = off;
       }
@@ -85,7 +99,8 @@ void add_other_positions(const design& p, std::vector<check>& all) {
       const secondary_wish& w = p.wanted.secondaries[i];
       const volts wanted = w.second_half ? w.voltage + *w.second_half : w.voltage;
       const double ratio = plain(s.on_load[i].second.plain()) / plain(wanted);
-      if (w.no_load || w.fixed.n || s.at == p.wanted.primary.on || volts_off(w, ratio) <= 1 + 1e-9) continue;
+      const bool by_rail = w.rail && w.rail->target;
+      if (by_rail || w.no_load || w.fixed.n || s.at == p.wanted.primary.on || volts_off(w, ratio) <= 1 + 1e-9) continue;
       all.push_back({is_heater(w) ? "heater-turns" : "ht-volts", level::caution,
                      "volts of " + w.name + " with the selector on " + written(s.at),
                      shown(s.on_load[i].second.plain(), 4) + " (" + signed_percent(ratio - 1) + ")",
@@ -190,6 +205,11 @@ std::vector<check> checks_of(const design& p, const std::string& cure) {
   std::vector<check> all;
   add_limits(p, cure, all);
   add_volts(p, cure, all);
+  for (check& c : rail_checks(p.supply)) {
+    if (c.weight == level::stop && c.code == "ht-volts" && c.cure.empty()) c.cure = cure;
+    all.push_back(std::move(c));
+  }
+  add_current_kinds(p, all);
   add_other_positions(p, all);
   add_heaters_over_mains(p, all);
   add_taps(p, all);
@@ -197,8 +217,7 @@ std::vector<check> checks_of(const design& p, const std::string& cure) {
   add_insulation(p, all);
   add_hot_spot(p, all);
   add_regulation(p, all);
-  std::stable_sort(all.begin(), all.end(), [](const check& a, const check& b) { return a.weight > b.weight; });
-  return all;
+  return in_order(std::move(all));
 }
 
 std::vector<std::string> winding_cautions() {

@@ -49,7 +49,9 @@ struct planned_winding {
   kilograms mass;
   ohms resistance_20, resistance_hot;
   volts_rms no_load, on_load;
+  volts_rms on_load_resistive;  ///< into a resistor that draws the same r.m.s. current; the primary's as on load
   amperes_rms current;
+  amperes_dc current_dc;
   amperes_per_square_metre density;
   watts loss;
   volt_amperes apparent;
@@ -77,11 +79,6 @@ struct planned_setting {
   amperes_rms current;
   amperes_per_square_metre density;
   teslas flux_density;
-  std::vector<std::pair<std::string, volts_rms>> on_load;
-};
-
-struct planned_state {
-  std::string load, mains;
   std::vector<std::pair<std::string, volts_rms>> on_load;
 };
 
@@ -123,7 +120,7 @@ struct design {
   std::vector<planned_winding> windings;  ///< in winding order, screens among them
   std::vector<planned_pair> pairs;
   std::vector<planned_setting> settings;
-  std::vector<planned_state> states;
+  supply_study supply;  ///< rails, and volts at every state of load and mains
   no_load_state idle;  ///< secondaries open, nominal mains
   teslas flux_nominal, flux_on_load, flux_high;
   planned_heat heat_high, heat_nominal;

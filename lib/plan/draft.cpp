@@ -164,10 +164,19 @@ potential working_volts(const demand& d, const turn_set& n, const coil_role& rol
   const secondary_wish& wish = d.secondaries[role.which];
   const secondary_turns& s = n.secondaries[role.which];
   potential p{volts_rms{as<volts>(per_turn * std::max(s.first, s.second).count())}, volts_dc{0_V}};
+  // A bridge lifts its winding by half the HT, a full-wave doubler one end of it by half of twice that.
+  const bool bridged = wish.rail && wish.rail->kind == supply::circuit::bridge;
+  const bool doubled = wish.rail && (wish.rail->kind == supply::circuit::full_wave_doubler ||
+                                     wish.rail->kind == supply::circuit::half_wave_doubler);
+  if (bridged || doubled) p.dc = volts_dc{peak_of_sine(p.ac).plain() * (bridged ? 0.5 : 1.0)};
   std::size_t host = 0;
   if (wish.floats_on && named_secondary(d, *wish.floats_on, host)) {
     const secondary_turns& h = n.secondaries[host];
-    p.dc = volts_dc{peak_of_sine(volts_rms{as<volts>(per_turn * std::max(h.first, h.second).count())}).plain()};
+    const auto& rail = d.secondaries[host].rail;
+    const bool twice = rail && (rail->kind == supply::circuit::full_wave_doubler ||
+                                rail->kind == supply::circuit::half_wave_doubler);
+    p.dc = volts_dc{peak_of_sine(volts_rms{as<volts>(per_turn * std::max(h.first, h.second).count())}).plain() *
+                    (twice ? 2.0 : 1.0)};
   }
   return p;
 }

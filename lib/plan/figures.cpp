@@ -19,12 +19,32 @@ std::string side_word(bool start) { return start ? "start" : "far"; }
 
 double quotient(volts_rms a, volts_rms b) { return plain(a.plain()) / plain(b.plain()); }
 
+// Volts of every port with its rail replaced by the resistor that draws the same r.m.s. current: a few rounds of the
+// phasor network, since the volts set the resistor.
+std::vector<volts_rms> resistive_volts(supply::network net, const supply::state& full) {
+  std::vector<volts_rms> volts_of_ports;
+  for (const supply::port_state& p : full.ports) volts_of_ports.push_back(p.on_load);
+  const bool rectified = !net.rails.empty();
+  net.rails.clear();
+  for (int round = 0; rectified && round < 6; ++round) {
+    for (std::size_t k = 0; k < net.ports.size(); ++k)
+      net.ports[k].load = volts_of_ports[k].plain() / std::max(full.ports[k].current.plain(), as<amperes>(1e-9));
+    const supply::state s = supply::solve_sine(net);
+    for (std::size_t k = 0; k < net.ports.size(); ++k) volts_of_ports[k] = s.ports[k].on_load;
+  }
+  return volts_of_ports;
+}
+
 class assembly {
  public:
   assembly(const demand& d, const shop& s, attempt a)
       : d_(d), s_(s), out_(d, std::move(a)), ports_(ports_of(d, out_.made.coil)) {}
 
   design finish() {
+    out_.supply = study(supply_of(d_, coil(), nominal()), [&](std::size_t i) {
+      return 1.0 / coil().n.secondaries[i].first.count();
+    });
+    resistive_ = resistive_volts(network_at(out_.supply.of, load_state::full, 1.0), nominal().electric);
     out_.turns_per_volt = turns_in_use(at(), coil().n.primary).count() / plain(d_.primary.on);
     for (std::size_t i = 0; i < coil().coils.size(); ++i) {
       if (coil().coils[i].screen_under)
@@ -36,7 +56,6 @@ class assembly {
     add_core();
     add_heat();
     add_settings();
-    add_states();
     out_.pairs = pairs_of(coil(), s_.insulation);
     out_.leakage = leakages_of(coil());
     out_.materials = materials_of(out_);
@@ -122,7 +141,7 @@ class assembly {
 
   void secondary_figures(planned_winding& w, std::size_t coil_number) const {
     const secondary_wish& wish = d_.secondaries[coil().coils[coil_number].role.which];
-    volts no_load = 0_V, on_load = 0_V;
+    volts no_load = 0_V, on_load = 0_V, resistive = 0_V;
     amperes through = 0_A;
     double error = 0;
     w.apparent = 0_VA;
@@ -132,10 +151,12 @@ class assembly {
       const supply::port_state& s = nominal().electric.ports[k];
       no_load += s.no_load.plain();
       on_load += s.on_load.plain();
+      resistive += resistive_[k].plain();
       through = std::max(through, current_through(k));
+      if (std::abs(plain(s.current_dc.plain())) > std::abs(plain(w.current_dc.plain()))) w.current_dc = s.current_dc;
       w.apparent += apparent_power(s.on_load, s.current);
       const volts wanted = p.half == 1 ? *wish.second_half : wish.voltage;
-      const double off = plain((wish.no_load ? s.no_load : s.on_load).plain()) / plain(wanted) - 1;
+      const double off = off_wanted(wish, s, wanted);
       if (std::abs(off) > std::abs(error)) error = off;
     }
     add_halves(w, wish, coil_number);
@@ -146,12 +167,23 @@ class assembly {
     }
     w.no_load = volts_rms{no_load};
     w.on_load = volts_rms{on_load};
+    w.on_load_resistive = volts_rms{resistive};
     w.current = amperes_rms{through};
     w.density = density_in(coil().coils[coil_number], through, w.n);
     w.regulation_ratio = quotient(w.no_load, w.on_load) - 1;
     w.error_ratio = error;
     w.tolerance = tolerance_of(wish);
     w.one_turn = on_load / static_cast<double>(w.n.count());
+  }
+
+  // How far a port's volts lie from what the job says; with a target how far the rail does.
+  double off_wanted(const secondary_wish& wish, const supply::port_state& s, volts wanted) const {
+    if (wish.rail && wish.rail->target) {
+      for (const planned_rail& r : out_.supply.rails) {
+        if (r.winding == wish.name) return plain(*r.off_target) / plain(wish.rail->target->at.plain());
+      }
+    }
+    return plain((wish.no_load ? s.no_load : s.on_load).plain()) / plain(wanted) - 1;
   }
 
   // Largest current in any part of a port: with that of the taps inside it.
@@ -215,7 +247,9 @@ class assembly {
       w.loss = 0_W;
       w.apparent = apparent_power(s.on_load, s.current);
       w.regulation_ratio = quotient(s.no_load, s.on_load) - 1;
-      w.error_ratio = plain((wish.no_load ? s.no_load : s.on_load).plain()) / plain(wish.voltage) - 1;
+      w.error_ratio = off_wanted(wish, s, wish.voltage);
+      w.on_load_resistive = resistive_[k];
+      w.current_dc = s.current_dc;
       w.tolerance = tolerance_of(wish);
       w.rise = host.rise;
       w.hot_spot = host.hot_spot;
@@ -280,19 +314,11 @@ class assembly {
     return all;
   }
 
-  void add_states() {
-    const auto add = [&](const std::string& mains, double ratio) {
-      out_.states.push_back({"full", mains, on_load(run_at(d_, coil(), at(), ratio, nominal().copper))});
-    };
-    add("low", 1 - d_.mains.under_ratio);
-    add("nominal", 1.0);
-    add("high", 1 + d_.mains.over_ratio);
-  }
-
   const demand& d_;
   const shop& s_;
   design out_;
   std::vector<port_place> ports_;
+  std::vector<volts_rms> resistive_;  ///< of each port
 };
 
 }  // namespace

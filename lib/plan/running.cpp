@@ -6,6 +6,7 @@
 
 #include <turnwright/measure/electrics.hpp>
 #include <turnwright/measure/literals.hpp>
+#include <turnwright/plan/turn_choice.hpp>
 #include <turnwright/wire/copper.hpp>
 
 namespace turnwright {
@@ -47,23 +48,43 @@ stray_coil primary_coil(const draft& f, const selector_position& at) {
 struct fixed_parts {
   std::vector<port_place> ports;
   std::vector<ohms> port_20;
-  supply::sine_network net;
+  amplifier_supply supply;
   primary_resistances primary_20;
+  turns primary_turns;
 };
 
-fixed_parts prepare(const demand& d, const draft& f, const selector_position& at, double mains_ratio) {
+std::vector<supplied_winding> windings_of(const demand& d, const std::vector<port_place>& ports) {
+  std::vector<supplied_winding> all;
+  for (std::size_t i = 0; i < d.secondaries.size(); ++i) {
+    const secondary_wish& wish = d.secondaries[i];
+    supplied_winding w{wish.name, 0, std::nullopt, wish.tap_of, wish.rail, is_heater(wish), wish.rated};
+    for (std::size_t k = 0; k < ports.size(); ++k) {
+      if (ports[k].secondary != i) continue;
+      if (ports[k].half == 0) w.first = k;
+      if (ports[k].half == 1) w.second = k;
+    }
+    all.push_back(std::move(w));
+  }
+  return all;
+}
+
+fixed_parts prepare(const demand& d, const draft& f, const selector_position& at) {
   fixed_parts p;
   p.ports = ports_of(d, f);
   p.primary_20 = primary_ohms_20(f, at);
-  p.net.mains = volts_rms{at.at * mains_ratio};
-  p.net.frequency = d.mains.frequency;
-  p.net.source_resistance = d.mains.source_resistance;
-  p.net.primary_turns = turns_in_use(at, f.n.primary);
-  p.net.leakage = leakage_matrix(f, at, p.ports);
+  p.primary_turns = turns_in_use(at, f.n.primary);
+  p.supply = {d.title, {}, windings_of(d, p.ports), d.mains.over_ratio, d.mains.under_ratio};
+  supply::network& net = p.supply.base;
+  net.mains = volts_rms{at.at};
+  net.frequency = d.mains.frequency;
+  net.source_resistance = d.mains.source_resistance;
+  net.leakage = leakage_matrix(f, at, p.ports);
   for (const port_place& place : p.ports) {
     p.port_20.push_back(resistance_20(f.coils[place.coil].laid, place.from, place.to));
-    p.net.ports.push_back(
-        {place.to - place.from, p.port_20.back(), load_of(d.secondaries[place.secondary], place.half), place.inside});
+    const secondary_wish& wish = d.secondaries[place.secondary];
+    const double of_primary = static_cast<double>((place.to - place.from).count()) / p.primary_turns.count();
+    net.ports.push_back({of_primary, p.port_20.back(),
+                         wish.rail ? std::nullopt : std::optional(load_of(wish, place.half)), place.inside});
   }
   return p;
 }
@@ -75,44 +96,67 @@ class settling {
       : d_(d),
         f_(f),
         r_(r),
-        parts_(prepare(d, f, r.at, r.mains_ratio)),
-        solver_(parts_.net),
-        emf_(parts_.net.mains.plain()) {
+        parts_(prepare(d, f, r.at)),
+        solver_(network_at(parts_.supply, load_state::full, r.mains_ratio)),
+        emf_(r.at.at * r.mains_ratio) {
     a_ = coil_index(f, true, 0);
     if (r.at.tap_b) b_ = coil_index(f, true, 1);
   }
 
+  bool exact() const { return solver_.exact(); }
+
   // One step of the electrical side at the copper temperatures of the running; returns the EMF's relative change.
   double step() {
     const auto hot = [&](std::size_t coil, ohms at_20) { return at_20 * copper::over_20(r_.copper[coil]); };
-    const ohms hot_a = hot(a_, parts_.primary_20.a), hot_b = b_ ? hot(*b_, parts_.primary_20.b) : 0_ohm;
-    r_.share = share_of(r_.at, hot_a, hot_b);
-    std::vector<ohms> ports;
-    for (std::size_t k = 0; k < parts_.ports.size(); ++k) ports.push_back(hot(parts_.ports[k].coil, parts_.port_20[k]));
-    solver_.set_resistances(r_.share.resistance, ports);
+    hot_a_ = hot(a_, parts_.primary_20.a);
+    hot_b_ = b_ ? hot(*b_, parts_.primary_20.b) : 0_ohm;
+    r_.share = share_of(r_.at, hot_a_, hot_b_);
+    port_hot_.clear();
+    for (std::size_t k = 0; k < parts_.ports.size(); ++k)
+      port_hot_.push_back(hot(parts_.ports[k].coil, parts_.port_20[k]));
+    solver_.set_resistances(r_.share.resistance, port_hot_);
     r_.flux_density =
-        peak_flux_density(volts_rms{emf_}, d_.mains.frequency, parts_.net.primary_turns, f_.core.net_area());
-    r_.magnetising = f_.core.magnetising_current(r_.flux_density, parts_.net.primary_turns);
-    solver_.set_shunt(emf_ * emf_ / f_.core.loss(r_.flux_density, d_.mains.frequency), emf_ / r_.magnetising.plain());
+        peak_flux_density(volts_rms{emf_}, d_.mains.frequency, parts_.primary_turns, f_.core.net_area());
+    r_.magnetising = f_.core.magnetising_current(r_.flux_density, parts_.primary_turns);
+    r_.core_loss_resistance = emf_ * emf_ / f_.core.loss(r_.flux_density, d_.mains.frequency);
+    r_.magnetising_inductance = inductance_of(emf_ / r_.magnetising.plain(), d_.mains.frequency);
+    solver_.set_shunt(r_.core_loss_resistance, r_.magnetising_inductance);
     solver_.solve();
     const double change = std::abs(plain(solver_.emf()) / plain(emf_) - 1);
     emf_ = solver_.emf();
-    note_losses(hot_a, hot_b);
+    note_losses();
     return change;
   }
 
   void finish() {
-    r_.electric = solver_.state();
+    r_.electric = solver_.all();
     r_.loss_beyond_curve = f_.core.loss_beyond_curve(r_.flux_density, d_.mains.frequency);
   }
 
+  // The supply at the figures of the last step.
+  amplifier_supply supplied() {
+    supply::network& net = parts_.supply.base;
+    net.primary_resistance = r_.share.resistance;
+    net.core_loss_resistance = r_.core_loss_resistance;
+    net.magnetising_inductance = r_.magnetising_inductance;
+    for (std::size_t k = 0; k < port_hot_.size(); ++k) net.ports[k].resistance = port_hot_[k];
+    return parts_.supply;
+  }
+
+  // Resistances of a running that has settled already.
+  void take_over() {
+    const auto hot = [&](std::size_t coil, ohms at_20) { return at_20 * copper::over_20(r_.copper[coil]); };
+    for (std::size_t k = 0; k < parts_.ports.size(); ++k)
+      port_hot_.push_back(hot(parts_.ports[k].coil, parts_.port_20[k]));
+  }
+
  private:
-  void note_losses(ohms hot_a, ohms hot_b) {
+  void note_losses() {
     const amperes line = solver_.line();
     r_.core_loss = solver_.core();
     r_.coil_loss.assign(f_.coils.size(), 0_W);
-    r_.coil_loss[a_] += line * line * r_.share.a * r_.share.a * hot_a;
-    if (b_) r_.coil_loss[*b_] += line * line * r_.share.b * r_.share.b * hot_b;
+    r_.coil_loss[a_] += line * line * r_.share.a * r_.share.a * hot_a_;
+    if (b_) r_.coil_loss[*b_] += line * line * r_.share.b * r_.share.b * hot_b_;
     for (std::size_t k = 0; k < parts_.ports.size(); ++k) r_.coil_loss[parts_.ports[k].coil] += solver_.copper(k);
     r_.copper_loss = 0_W;
     for (const watts& w : r_.coil_loss) r_.copper_loss += w;
@@ -122,8 +166,10 @@ class settling {
   const draft& f_;
   running& r_;
   fixed_parts parts_;
-  supply::sine_solver solver_;
+  supply::network_solver solver_;
   volts emf_;
+  ohms hot_a_, hot_b_;
+  std::vector<ohms> port_hot_;
   std::size_t a_ = 0;
   std::optional<std::size_t> b_;
 };
@@ -202,6 +248,13 @@ std::vector<henries> leakage_matrix(const draft& f, const selector_position& at,
   return leakage_against_first(coils, stray_space_of(f), turns_in_use(at, f.n.primary));
 }
 
+amplifier_supply supply_of(const demand& d, const draft& f, const running& r) {
+  running copy = r;
+  settling electric(d, f, copy);
+  electric.take_over();
+  return electric.supplied();
+}
+
 running run_at(const demand& d, const draft& f, const selector_position& at, double mains_ratio,
                const std::vector<temperature>& copper) {
   running r;
@@ -209,12 +262,36 @@ running run_at(const demand& d, const draft& f, const selector_position& at, dou
   r.mains_ratio = mains_ratio;
   r.copper = copper;
   settling electric(d, f, r);
+  const double enough = electric.exact() ? 1e-12 : 1e-5;
   for (r.steps = 1; r.steps <= 60; ++r.steps) {
-    if (electric.step() < 1e-12) break;
+    if (electric.step() < enough) break;
   }
   electric.finish();
   return r;
 }
+
+namespace {
+
+// Temperatures at which the coils stand while the currents stay what they are: a loss follows its own resistance.
+std::vector<temperature> temperatures_at(const demand& d, const thermal::heat_balance& balance, running& r) {
+  std::vector<temperature> now = r.copper;
+  for (int k = 0; k < 60; ++k) {
+    std::vector<watts> loss = r.coil_loss;
+    for (std::size_t i = 0; i < loss.size(); ++i) loss[i] *= copper::over_20(now[i]) / copper::over_20(r.copper[i]);
+    r.heat = balance.solve(r.core_loss, loss);
+    double change = 0;
+    for (std::size_t i = 0; i < now.size(); ++i) {
+      // Far beyond any winding's life the figure only has to stay finite and large.
+      const temperature next = d.limits.ambient + std::min(r.heat.windings[i], 1000_K);
+      change = std::max(change, std::abs(next.value() - now[i].value()));
+      now[i] = next;
+    }
+    if (change < 1e-9) break;
+  }
+  return now;
+}
+
+}  // namespace
 
 running run(const demand& d, const draft& f, const selector_position& at, double mains_ratio) {
   running r;
@@ -223,18 +300,16 @@ running run(const demand& d, const draft& f, const selector_position& at, double
   r.copper.assign(f.coils.size(), d.limits.ambient + 40_K);
   settling electric(d, f, r);
   const thermal::heat_balance balance(heated(d, f));
+  // Behind rectifiers the solver's own tolerance is some 1e-5, a hundredth of a kelvin.
+  const double enough_K = electric.exact() ? 1e-8 : 0.02, enough_emf = electric.exact() ? 1e-11 : 1e-5;
   for (r.steps = 1; r.steps <= 80; ++r.steps) {
     const double emf_change = electric.step();
-    r.heat = balance.solve(r.core_loss, r.coil_loss);
+    std::vector<temperature> next = temperatures_at(d, balance, r);
     r.residual_K = 0;
-    for (std::size_t i = 0; i < f.coils.size(); ++i) {
-      // Far beyond any winding's life the figure only has to stay finite and large.
-      const kelvins rise = std::min(r.heat.windings[i], 1000_K);
-      const temperature next = d.limits.ambient + rise;
-      r.residual_K = std::max(r.residual_K, std::abs(next.value() - r.copper[i].value()));
-      r.copper[i] = next;
-    }
-    if (r.residual_K < 1e-8 && emf_change < 1e-11) break;
+    for (std::size_t i = 0; i < next.size(); ++i)
+      r.residual_K = std::max(r.residual_K, std::abs(next[i].value() - r.copper[i].value()));
+    if (r.residual_K < enough_K && emf_change < enough_emf) break;
+    r.copper = std::move(next);
   }
   electric.finish();
   return r;

@@ -2,7 +2,7 @@
 #pragma once
 
 #include <turnwright/plan/draft.hpp>
-#include <turnwright/supply/sine.hpp>
+#include <turnwright/plan/rails.hpp>
 #include <turnwright/thermal/balance.hpp>
 
 #include <vector>
@@ -24,7 +24,7 @@ std::vector<port_place> ports_of(const demand& d, const draft& f);
 struct running {
   selector_position at;
   double mains_ratio = 1.0;  ///< mains over nominal of that position
-  supply::sine_state electric;
+  supply::state electric;
   primary_share share;
   thermal::heat_state heat;
   std::vector<temperature> copper;  ///< average of each coil
@@ -33,6 +33,8 @@ struct running {
   teslas flux_density;  ///< on load
   amperes_rms magnetising;
   bool loss_beyond_curve = false;
+  henries magnetising_inductance;
+  ohms core_loss_resistance;  ///< referred to the primary
   int steps = 0;
   double residual_K = 0;  ///< last change of any temperature
 };
@@ -42,6 +44,9 @@ running run(const demand& d, const draft& f, const selector_position& at, double
 /// The same with the copper held at given temperatures: no balance of heat is sought.
 running run_at(const demand& d, const draft& f, const selector_position& at, double mains_ratio,
                const std::vector<temperature>& copper);
+
+/// The transformer of a running with everything that hangs on it, at the resistances and the shunt it settled at.
+amplifier_supply supply_of(const demand& d, const draft& f, const running& r);
 
 /// Leakage of every port against the primary in use, referred to its turns: matrix row by row.
 std::vector<henries> leakage_matrix(const draft& f, const selector_position& at, const std::vector<port_place>& ports);

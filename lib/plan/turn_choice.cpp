@@ -87,7 +87,7 @@ scored secondaries_for(const demand& d, const tap_turns& taps, const std::vector
 
 bool is_heater(const secondary_wish& w) {
   const volts whole = w.second_half ? w.voltage + *w.second_half : w.voltage;
-  return plain(whole) <= 13 && !w.no_load && !w.tap_of;
+  return plain(whole) <= 13 && !w.no_load && !w.tap_of && !w.rail;
 }
 
 volts_tolerance tolerance_of(const secondary_wish& w) {

@@ -53,23 +53,27 @@ wire_pick chosen_wire(const demand& d, const shop& s, const coil_role& r, metres
   return pick_of(d, best ? *best : s.wire.thickest(d.wire.system), best_strands);
 }
 
-// Current of the first half with that of every tap inside it: they flow together, in phase at worst.
-amperes with_taps(const demand& d, const secondary_wish& w) {
-  amperes sum = w.current.plain();
-  for (const secondary_wish& t : d.secondaries) {
-    if (t.tap_of == w.name) sum += t.current.plain();
-  }
-  return sum;
-}
-
 }  // namespace
 
-std::vector<coil_amperes> sizing_currents(const demand& d, amperes line_at_nominal, bool stepped) {
+std::vector<amperes> currents_of_job(const demand& d) {
+  std::vector<amperes> all;
+  for (const secondary_wish& w : d.secondaries) {
+    amperes sum = w.current.plain();
+    for (const secondary_wish& t : d.secondaries) {
+      if (t.tap_of == w.name) sum += t.current.plain();
+    }
+    all.push_back(sum);
+  }
+  return all;
+}
+
+std::vector<coil_amperes> sizing_currents(const demand& d, amperes line_at_nominal,
+                                          const std::vector<amperes>& secondaries, bool stepped) {
   const auto positions = selector_positions(d.primary);
   std::vector<coil_amperes> all;
   for (const coil_role& r : coils_of(d)) {
     if (!r.primary) {
-      all.push_back({with_taps(d, d.secondaries[r.which])});
+      all.push_back({secondaries[r.which]});
       continue;
     }
     coil_amperes sections(d.primary.taps.size(), 0_A);

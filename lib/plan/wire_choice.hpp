@@ -10,9 +10,14 @@ namespace turnwright {
 /// R.m.s. amperes that a coil's wire has to carry: one figure, or one for each tap section of a primary.
 using coil_amperes = std::vector<amperes>;
 
-/// Currents that size the wires, the worst selector position of each section taken, from the line current at nominal.
-/// `stepped`: one figure for each tap section.
-std::vector<coil_amperes> sizing_currents(const demand& d, amperes line_at_nominal, bool stepped);
+/// R.m.s. current of every secondary as the job writes it, with that of every tap inside it: they flow together, in
+/// phase at worst. Behind a rectifier a first guess.
+std::vector<amperes> currents_of_job(const demand& d);
+
+/// Currents that size the wires, the worst selector position of each section taken, from the line current at nominal
+/// and the current of every secondary. `stepped`: one figure for each tap section.
+std::vector<coil_amperes> sizing_currents(const demand& d, amperes line_at_nominal,
+                                          const std::vector<amperes>& secondaries, bool stepped);
 
 /// Current density of a careful winder for so much apparent power [A/mm2 as a quantity]: 5.2 VA^(-1/7) A/mm2, kept from
 /// 1.8 to 4.5. Source: constant rise scaling (derived) with a constant of judgement.

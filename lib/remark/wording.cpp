@@ -125,7 +125,7 @@ remark unknown_name(std::string where, std::string_view name, std::string what, 
 }
 
 remark ambiguous_name(std::string where, std::string_view name, std::span<const std::string> fits) {
-  return {"ambiguous-name", std::move(where), quoted(name) + ", which fits more than one pattern",
+  return {"ambiguous-name", std::move(where), quoted(name) + ", which fits more than one row",
           "one of: " + listed(fits), "write the name as it stands in this list"};
 }
 

@@ -4,14 +4,16 @@
 #include <turnwright/measure/written.hpp>
 #include <turnwright/sheet/columns.hpp>
 
+#include "parts.hpp"
+
 namespace turnwright {
 
 using namespace literals;
+using namespace sheet_detail;
 
 namespace {
 
 std::string mm(metres l, int decimals = 1) { return fixed(plain(l) * 1e3, decimals); }
-std::string number(double x, int digits) { return shortest(rounded_to(x, digits)); }
 std::string volts_text(volts_rms v) {
   const double x = plain(v.plain());
   return fixed(x, x < 20 ? 2 : 1);
@@ -165,19 +167,6 @@ std::string settings_part(const design& p) {
   return out + "\n";
 }
 
-std::string states_part(const design& p) {
-  std::vector<std::string> heads{"mains"};
-  for (const auto& [name, v] : p.states.front().on_load) heads.push_back(name + " V");
-  text_table t(heads);
-  for (const planned_state& s : p.states) {
-    std::vector<std::string> cells{s.mains};
-    for (const auto& [name, v] : s.on_load) cells.push_back(volts_text(v));
-    t.add(cells);
-  }
-  return "Volts on load over the mains range (" + signed_percent(p.wanted.mains.over_ratio) + " -" +
-         percent(p.wanted.mains.under_ratio) + ")\n" + t.text() + "\n";
-}
-
 std::string power_part(const design& p) {
   const running& r = p.made.nominal;
   std::string out = labelled("Power", shown(r.electric.output, 4) + " out, " + shown(r.electric.input, 4) + " in (" +
@@ -230,14 +219,7 @@ std::string tests_part(const design& p) {
 
 std::string checks_part(const design& p) {
   std::string out = "Checks\n";
-  for (const check& c : p.checks) {
-    std::string word(word_of(c.weight));
-    if (c.weight == level::stop) word = "STOP";
-    if (c.weight == level::caution) word = "CAUTION";
-    word.resize(8, ' ');
-    out += wrapped(c.code + ": " + c.text + "; found " + c.found + ", bound " + c.bound, "  " + word + " ");
-    if (!c.cure.empty()) out += wrapped("cure: " + c.cure, "           ");
-  }
+  for (const check& c : p.checks) out += check_lines(c);
   return out + "\n";
 }
 
@@ -298,7 +280,7 @@ std::string workings_part(const design& p) {
 
 std::string report_of(const design& p, bool workings) {
   std::string out = head(p) + core_part(p) + winding_table(p) + ends_part(p) + electric_table(p);
-  out += settings_part(p) + states_part(p) + power_part(p) + pairs_part(p) + tests_part(p) + materials_part(p) +
+  out += settings_part(p) + rails_text(p.supply) + states_text(p.supply) + power_part(p) + pairs_part(p) + tests_part(p) + materials_part(p) +
          checks_part(p);
   if (workings) out += workings_part(p);
   out += assumed_part(p) + standing_part(p) + "Cautions\n";

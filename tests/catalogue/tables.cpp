@@ -29,7 +29,7 @@ std::string line_of(const table& t, const row& r) {
 
 bool one_row_to_a_name(const std::string& table_name) {
   return table_name != "stacks" && table_name != "formers" && table_name != "steel_magnetisation" &&
-         table_name != "steel_loss";
+         table_name != "steel_loss" && table_name != "rectifier_resistances" && table_name != "output_stages";
 }
 
 std::vector<std::string> texts(const std::vector<row>& rows, const std::string& column) {
@@ -42,7 +42,7 @@ std::vector<std::string> texts(const std::vector<row>& rows, const std::string& 
 
 TEST_CASE("every bundled table loads, and its text is its file to the byte") {
   const catalogue tables = catalogue::bundled();
-  CHECK(tables.names().size() >= 14);
+  CHECK(tables.names().size() >= 19);
   for (const std::string& name : tables.names()) {
     INFO(name);
     const table& t = tables.named(name);
