@@ -144,7 +144,7 @@ attempt settle(const demand& d, const shop& s, const core_body& core, const flux
       break;
     }
     draft f = lay_out(d, s, core, n, wires);
-    running r = run(d, f, at, 1.0);
+    running r = run(d, f, at, 1.0, seen.empty() ? std::vector<temperature>{} : seen.back().r.copper, !held);
     ratios = ratios_of(d, f, r);
     if (!held) {
       line = r.electric.primary_current.plain();
@@ -156,7 +156,8 @@ attempt settle(const demand& d, const shop& s, const core_body& core, const flux
   }
   settled_round& kept =
       *std::min_element(seen.begin(), seen.end(), [](const auto& a, const auto& b) { return a.score < b.score; });
-  out.volts_score = kept.score;
+  if (out.rounds <= free_rounds) kept.r = run(d, kept.f, at, 1.0, kept.r.copper);  // it stood still on rough figures
+  out.volts_score = score_of(d, kept.f, kept.r);
   out.coil = std::move(kept.f);
   out.nominal = std::move(kept.r);
   return out;
@@ -311,10 +312,10 @@ attempt wind(const demand& d, const shop& s, const core_body& core, bool stepped
                            : plain(usual_density(rating_of(d)));
   const auto try_density = [&](double si) {
     attempt a = settle(d, s, core, flux, as<amperes_per_square_metre>(si), stepped);
-    a.high = run(d, a.coil, at, 1 + d.mains.over_ratio);
+    a.high = run(d, a.coil, at, 1 + d.mains.over_ratio, a.nominal.copper);
     for (const selector_position& p : selector_positions(d.primary)) {
       if (p.at == at.at) continue;
-      running r = run(d, a.coil, p, 1 + d.mains.over_ratio);
+      running r = run(d, a.coil, p, 1 + d.mains.over_ratio, a.high.copper);
       if (hottest_winding(r) > hottest_winding(a.high)) a.high = std::move(r);
     }
     test_limits(d, a);

@@ -39,8 +39,10 @@ struct running {
   double residual_K = 0;  ///< last change of any temperature
 };
 
-/// The transformer at a selector position with its nominal volts times `mains_ratio`, at the balance of heat.
-running run(const demand& d, const draft& f, const selector_position& at, double mains_ratio);
+/// The transformer at a selector position with its nominal volts times `mains_ratio`, at the balance of heat, which is
+/// sought from the temperatures `start` where they are given. `rough`: figures behind rectifiers within some 0.3 %.
+running run(const demand& d, const draft& f, const selector_position& at, double mains_ratio,
+            const std::vector<temperature>& start = {}, bool rough = false);
 /// The same with the copper held at given temperatures: no balance of heat is sought.
 running run_at(const demand& d, const draft& f, const selector_position& at, double mains_ratio,
                const std::vector<temperature>& copper);

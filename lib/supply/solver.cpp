@@ -20,9 +20,9 @@ void network_solver::set_shunt(ohms core_loss, henries magnetising) {
   net_.magnetising_inductance = magnetising;
 }
 
-void network_solver::solve() {
+void network_solver::solve(int steps) {
   if (sine_) return sine_->solve();
-  last_ = solve_periodic(net_);
+  last_ = solve_periodic(net_, {steps, false});
 }
 
 state solve(const network& net) { return net.rails.empty() ? solve_sine(net) : solve_periodic(net); }

@@ -17,7 +17,8 @@ class network_solver {
   void set_resistances(ohms primary, const std::vector<ohms>& ports);
   /// The branch across p: core loss and magnetising inductance, referred to the primary.
   void set_shunt(ohms core_loss, henries magnetising);
-  void solve();
+  /// Solves; with rails on a grid of so many steps to the cycle.
+  void solve(int steps = grid{}.steps);
 
   /// Figures of the last solution: volts across p, line current, loss in the core and in a port's own resistance.
   volts emf() const { return sine_ ? sine_->emf() : last_.emf.plain(); }
