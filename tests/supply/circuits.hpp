@@ -37,8 +37,16 @@ inline supply::diode valve_diode(double k, double series = 0) {
 inline supply::diode ideal_diode() { return line_diode(0, 0); }
 
 inline supply::network mains_of(double v, double hz, double primary_r = 0) {
-  return {volts_rms{as<volts>(v)}, as<hertz>(hz), as<ohms>(0), as<ohms>(primary_r), as<henries>(0),
-          std::nullopt,            std::nullopt,  {},          {},                  {}};
+  return {volts_rms{as<volts>(v)},
+          as<hertz>(hz),
+          as<ohms>(0),
+          as<ohms>(primary_r),
+          as<henries>(0),
+          std::nullopt,
+          std::nullopt,
+          {},
+          {},
+          {}};
 }
 
 /// Adds a port with so many volts off load and, last, enlarges the leakage matrix by nothing.

@@ -123,13 +123,11 @@ class supply_dice {
   // A bias supply from a tap within a half.
   void add_bias_tap(std::size_t half, double open, double r) {
     const double part = real(0.1, 0.5), v = 1.2 * part * open, amps = std::exp(real(-7, -4));
-    const std::size_t tap =
-        add_port(net_, part * open, plain(net_.ports[half].resistance) * part, std::nullopt, half);
+    const std::size_t tap = add_port(net_, part * open, plain(net_.ports[half].resistance) * part, std::nullopt, half);
     watts_ += v * amps;
     supply::diode anode = diode_for(v, amps);
     if (chance(0.5)) anode.series = as<ohms>(moved(0.1 * v / amps));
-    net_.rails.push_back(
-        rail_of(supply::circuit::half_wave, tap, anode, chain(v, amps, false, false, 1)));
+    net_.rails.push_back(rail_of(supply::circuit::half_wave, tap, anode, chain(v, amps, false, false, 1)));
     net_.rails.back().negative = chance(0.7);
     static_cast<void>(r);
   }
