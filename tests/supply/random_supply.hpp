@@ -56,10 +56,10 @@ class supply_dice {
     return {supply::exponential_law{as<amperes>(moved(5e-9)), real(1.2, 2), as<ohms>(moved(0.05))}, as<ohms>(series)};
   }
 
-  // Nodes of a rail; a tenth to a fifth of the volts is dropped in the chain.
+  // Nodes of a rail; a twentieth to an eighth of the volts is dropped in the chain.
   std::vector<supply::rail_node> chain(double v, double amps, bool doubled, bool choke_input, double ripples) {
     const std::size_t count = chance(0.3) ? 1 : whole(1, want_.nodes);
-    const double r_load = v / amps, hz = plain(net_.frequency) * ripples, left = real(0.1, 0.2) / double(count);
+    const double r_load = v / amps, hz = plain(net_.frequency) * ripples, left = real(0.05, 0.12) / double(count);
     std::vector<supply::rail_node> nodes;
     double behind = amps;
     for (std::size_t i = 0; i < count; ++i) {
@@ -76,7 +76,7 @@ class supply_dice {
       const bool last = i + 1 == count;
       const double here = last ? behind : behind * real(0, 0.6);
       const double c = moved((doubled && i == 0 ? 2 : 1) * amps / (hz * 0.05 * v));
-      const bool bare = !doubled && count > 1 && chance(0.05);  // a node without capacitor
+      const bool bare = i > 0 && chance(0.05);  // a node without capacitor
       supply::rail_node n = node_of(through, bare ? 0 : c, chance(0.5) ? moved(0.05 / (6.3 * hz * c)) : 0, 0);
       const std::size_t sort = whole(0, 2);
       if (sort != 1) n.load = amperes_dc{as<amperes>(moved_amps(sort == 2 ? here / 2 : here))};
