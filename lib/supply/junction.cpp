@@ -229,7 +229,7 @@ void junction_solver::all_together(const double* p) {
     from_ = v_;
     step_by(1);
     double after = miss(p), part = 1;
-    while (pass >= free_passes && after > sum && part > 1e-3) {
+    while (pass >= free_passes && after > sum && part > 0.2) {
       part /= 2;
       step_by(part);
       after = miss(p);
