@@ -111,7 +111,7 @@ class reader {
                             amperes_dc{as<amperes>(mean_.mean(amps[k]) * (p.n < 0 ? -1 : 1))}, as<watts>(load)});
       out_.copper.push_back(as<watts>(copper));
       out_.shared_current.push_back(amperes_rms{as<amperes>(mean_.rms(through))});
-      spent_ += copper + rms_v * rms_v * p.load_g;
+      spent_ += copper + rms_v * rms_v * (p.load_g + leak);
       output += load;
     }
     out_.output = as<watts>(output);
@@ -210,6 +210,8 @@ class reader {
     double average = 0, square = 0, loss = 0, drop = 0, time = 0;
     for (int k = 0; k < stages; ++k) {
       const double i = amps(k), w = (k % 2 == 0 ? 1 - stage_share : stage_share) / grid_.steps();
+      const double all_v = volts_at(k) + j.series * std::max(i, 0.0);
+      spent_ += w * leak * all_v * all_v;
       if (i <= 0) continue;
       const double v = volts_at(k) + j.own_r * i;
       average += w * i;

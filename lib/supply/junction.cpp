@@ -21,8 +21,9 @@ inline point law_at(const junction& j, double v) {
       return {root * v, 1.5 * root};
     }
     case law::exponential: {
+      // Less the little that counts as off: a law with a step at its threshold may have no solution there.
       const double e = j.a * std::exp(std::min(v / j.b, 200.0));
-      return {e - j.a, e / j.b};
+      return {e - j.a * std::exp(j.threshold / j.b), e / j.b};
     }
   }
   return {0, 0};
@@ -89,6 +90,10 @@ void junction_solver::guess(const double* p, const past& then) {
     const bool on = then.last[j] > d.threshold, was_on = then.before[j] > d.threshold;
     v_[j] = on == was_on ? 2 * then.last[j] - then.before[j] : then.last[j];
     if (on && v_[j] <= d.threshold) v_[j] = d.threshold + (then.last[j] - d.threshold) / 2;
+    // Volts that swept up to the threshold do not go on beyond it; an exponential follows no straight line for long.
+    if (!on && v_[j] > d.threshold)
+      v_[j] = p[j] > d.threshold ? std::min(v_[j], alone(d, p[j], -f(j, j))) : d.threshold;
+    if (on && d.kind == law::exponential) v_[j] = std::min(v_[j], then.last[j] + 2 * d.b);
   }
 }
 
@@ -207,8 +212,7 @@ bool junction_solver::close_enough() const {
 }
 
 void junction_solver::step_by(double part) {
-  for (std::size_t j = 0; j < v_.size(); ++j)
-    v_[j] = part < 1 ? from_[j] + part * dv_[j] : stepped(e_.diodes[j].j, from_[j], dv_[j]);
+  for (std::size_t j = 0; j < v_.size(); ++j) v_[j] = stepped(e_.diodes[j].j, from_[j], part * dv_[j]);
 }
 
 void junction_solver::all_together(const double* p) {
@@ -225,7 +229,7 @@ void junction_solver::all_together(const double* p) {
     from_ = v_;
     step_by(1);
     double after = miss(p), part = 1;
-    while (pass >= free_passes && after > sum && part > 1e-3) {
+    while (pass >= free_passes && after > sum && part > 0.2) {
       part /= 2;
       step_by(part);
       after = miss(p);

@@ -10,7 +10,7 @@ using Eigen::MatrixXd;
 using Eigen::VectorXd;
 
 constexpr int coarse_steps = 32;
-constexpr double coarse_enough = 1e-3, fine_enough = 2e-5, stalled = 0.7;
+constexpr double coarse_enough = 1e-3, fine_enough = 2e-5, periodic_enough = 5e-5, stalled = 0.7;
 
 // One search on one grid. The map x - P(x) is monotone in the norm of the stored energy, since the circuit is
 // incrementally passive; so a step that makes that norm grow is refused and a more careful one tried.
@@ -98,7 +98,7 @@ bool chord(search& s, VectorXd& x, const MatrixXd& inverse, shot& out) {
     const double size = s.against_scale(step, x);
     out.residual = s.against_scale(f, x);
     out.x.assign(x.data(), x.data() + x.size());
-    if (size < fine_enough) return true;
+    if (size < fine_enough && out.residual < periodic_enough) return true;
     if (k > 2 && size > stalled * before) return false;
     before = size;
     x += step;
