@@ -27,7 +27,8 @@ question asked_of(const supply_order& order, const catalogue& tables, const shop
   }
   const design p = plan(read_job(text, origin, s, tables), s);
   question q{p.supply.of, p.assumed};
-  q.assumed.insert(q.assumed.begin(), {"transformer", p.made.coil.core.choice().pattern.name, "planned from the job, hot, at full load"});
+  q.assumed.insert(q.assumed.begin(),
+                   {"transformer", p.made.coil.core.choice().pattern.name, "planned from the job, hot, at full load"});
   return q;
 }
 
@@ -90,7 +91,9 @@ void ask_what_if(const supply_order& order, const shop& s, question& q) {
     const change c = split(text);
     rectifier_wish& r = rail_of(q.supply, c.of, "--rectifier").rectifier;
     const rectifier_type& t = s.valves.rectifier(c.to, "--rectifier");
-    if (!t.law) throw refused(wording::other("unknown-name", "--rectifier", wording::quoted(c.to), "a rectifier whose drop is known"));
+    if (!t.law)
+      throw refused(
+          wording::other("unknown-name", "--rectifier", wording::quoted(c.to), "a rectifier whose drop is known"));
     r = {t, {law_of(t), r.each.series}};
     changed("--rectifier", text);
   }
@@ -98,7 +101,9 @@ void ask_what_if(const supply_order& order, const shop& s, question& q) {
     const change c = split(text);
     node_wish& first = rail_of(q.supply, c.of, "--reservoir").nodes.front();
     const farads value = figure_of<farads>(c.to, "--reservoir", "1 nF", "1 F");
-    if (!first.shunt) throw refused(wording::other("circuit", "--reservoir", "a rail whose first node has no capacitor", "one that has"));
+    if (!first.shunt)
+      throw refused(
+          wording::other("circuit", "--reservoir", "a rail whose first node has no capacitor", "one that has"));
     first.shunt->value = value;
     changed("--reservoir", text);
   }
@@ -118,7 +123,8 @@ status run_supply(const supply_order& order, const catalogue& tables, const shop
   ask_what_if(order, s, q);
   const supply_study done_study = study(q.supply);
   if (order.waveform && done_study.rails.empty())
-    throw refused(wording::other("circuit", "--waveform", "a job without a rectified winding", "a job with a rail to draw"));
+    throw refused(
+        wording::other("circuit", "--waveform", "a job without a rectified winding", "a job with a rail to draw"));
   const std::vector<check> checks = in_order(rail_checks(done_study));
   const std::vector<std::string> cautions = supply_cautions();
   const std::string json = order.output.json ? json_of(done_study, checks, q.assumed, cautions) : "";

@@ -35,8 +35,9 @@ struct short_form {
 
 /// What a short form stands for.
 struct written_job {
-  std::string text;                         ///< the job file
-  std::vector<std::string> kind_left_open;  ///< windings whose amperes are called neither rms nor dc, and were taken as dc
+  std::string text;  ///< the job file
+  std::vector<std::string>
+      kind_left_open;  ///< windings whose amperes are called neither rms nor dc, and were taken as dc
 };
 /// The job that a short form stands for. Throws `refused` with all faults.
 written_job job_of(const short_form& s);

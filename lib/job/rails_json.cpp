@@ -57,9 +57,8 @@ json rail_json(const planned_rail& r, hertz mains) {
   for (const planned_node& n : r.nodes) j["nodes"].push_back(node_json(r, n, mains));
   j["rectifier"] = rectifier_json(r);
   if (r.off_target) {
-    j["target"] = {{"node", r.wish.target->node},
-                   {"voltage_V", figure(r.wish.target->at)},
-                   {"off_V", figure(*r.off_target)}};
+    j["target"] = {
+        {"node", r.wish.target->node}, {"voltage_V", figure(r.wish.target->at)}, {"off_V", figure(*r.off_target)}};
     if (r.one_turn) j["target"]["one_turn_V"] = figure(*r.one_turn);
   }
   return j;

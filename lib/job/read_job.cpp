@@ -55,8 +55,7 @@ void read_duty(reading_desk& desk, page& root) {
     duty->quantity<seconds>("full", "0 s", "1000 h");
     duty->quantity<seconds>("idle", "0 s", "1000 h");
     duty->finish();
-    desk.assume("/duty", "continuous",
-                "full load is reckoned all the time: the safe side");
+    desk.assume("/duty", "continuous", "full load is reckoned all the time: the safe side");
   } else {
     desk.assume("/duty", "continuous", "nothing else is said");
   }

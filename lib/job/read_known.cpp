@@ -38,12 +38,15 @@ std::vector<Q> one_or_two(page& w, const char* key, const char* least, const cha
     return halves ? std::vector<Q>{*q / 2.0, *q / 2.0} : std::vector<Q>{*q};
   }
   if (!halves || v->size() != 2) {
-    w.fault(wording::wrong_sort(w.place(key), as_written(*v), halves ? "one figure, or a list of two, one for each half" : "one figure: the winding has no halves"));
+    w.fault(wording::wrong_sort(
+        w.place(key), as_written(*v),
+        halves ? "one figure, or a list of two, one for each half" : "one figure: the winding has no halves"));
     return {};
   }
   std::vector<Q> both;
   for (std::size_t i = 0; i < 2; ++i) {
-    if (const auto q = w.quantity_of<Q>((*v)[i], w.place(key) + "/" + std::to_string(i), least, most)) both.push_back(*q);
+    if (const auto q = w.quantity_of<Q>((*v)[i], w.place(key) + "/" + std::to_string(i), least, most))
+      both.push_back(*q);
   }
   return both;
 }
@@ -63,7 +66,8 @@ known_winding read_winding(reading_desk& desk, page& w) {
     w.fault(wording::missing(w.place("name"), "a name of 1 to 40 characters, such as \"heaters\""));
   const auto text = w.text("no_load_voltage");
   if (!w.has("no_load_voltage"))
-    w.fault(wording::missing(w.place("no_load_voltage"), "the volts without load, such as \"6.75 V\" or \"300-0-300 V\""));
+    w.fault(
+        wording::missing(w.place("no_load_voltage"), "the volts without load, such as \"6.75 V\" or \"300-0-300 V\""));
   const auto v = text ? read_winding_volts(*text, w.place("no_load_voltage"), desk.faults) : std::nullopt;
   if (v) {
     out.first = v->first;
@@ -75,7 +79,8 @@ known_winding read_winding(reading_desk& desk, page& w) {
   w.text("floats_on");
   out.resistance = one_or_two<ohms>(w, "resistance", "1 uohm", "1 Mohm", out.second.has_value());
   if (!w.has("resistance"))
-    w.fault(wording::missing(w.place("resistance"), "the winding's resistance, such as \"48 ohm\", or one for each half"));
+    w.fault(
+        wording::missing(w.place("resistance"), "the winding's resistance, such as \"48 ohm\", or one for each half"));
   out.leakage = one_or_two<henries>(w, "leakage_inductance", "0 H", "100 H", out.second.has_value());
   const bool rectified = asks_for_rail(w);
   if (rectified) out.rail = read_rail(desk, w, out.second.has_value(), out.first, std::nullopt);
@@ -85,7 +90,8 @@ known_winding read_winding(reading_desk& desk, page& w) {
   if (w.has("load") && rectified)
     w.fault(wording::other("either-or", w.where(), "both a load across the winding and a rail", "one of them"));
   if (out.rail && out.rail->target)
-    w.fault(wording::other("either-or", w.place("target"), "a target for a known winding", "no target: its turns are what they are"));
+    w.fault(wording::other("either-or", w.place("target"), "a target for a known winding",
+                           "no target: its turns are what they are"));
   out.tap_of = w.text("tap_of");
   if (out.tap_of && out.second)
     w.fault(wording::other("tap", w.where(), "a tap with halves of its own", "a plain tap"));
@@ -96,7 +102,8 @@ known_winding read_winding(reading_desk& desk, page& w) {
 
 class builder {
  public:
-  builder(reading_desk& desk, const std::vector<known_winding>& all, volts primary) : desk_(desk), all_(all), primary_(primary) {}
+  builder(reading_desk& desk, const std::vector<known_winding>& all, volts primary)
+      : desk_(desk), all_(all), primary_(primary) {}
 
   void build(amplifier_supply& out) {
     for (const known_winding& w : all_) {
@@ -106,7 +113,8 @@ class builder {
       if (w.tap_of) add(out, w, host_of(out, w));
     }
     // In the order of the job.
-    std::stable_sort(out.windings.begin(), out.windings.end(), [&](const auto& a, const auto& b) { return place(a.name) < place(b.name); });
+    std::stable_sort(out.windings.begin(), out.windings.end(),
+                     [&](const auto& a, const auto& b) { return place(a.name) < place(b.name); });
     const std::size_t ports = out.base.ports.size();
     out.base.leakage.assign(ports * ports, 0_H);
     for (std::size_t k = 0; k < ports; ++k) {
@@ -116,7 +124,8 @@ class builder {
 
  private:
   std::size_t place(const std::string& name) const {
-    return static_cast<std::size_t>(std::find_if(all_.begin(), all_.end(), [&](const known_winding& w) { return w.name == name; }) - all_.begin());
+    return static_cast<std::size_t>(
+        std::find_if(all_.begin(), all_.end(), [&](const known_winding& w) { return w.name == name; }) - all_.begin());
   }
 
   std::optional<std::size_t> host_of(const amplifier_supply& out, const known_winding& w) const {
@@ -125,13 +134,21 @@ class builder {
       const bool fits = w.first < out.base.ports[h.first].ratio * primary_ && !w.resistance.empty() &&
                         w.resistance.front() < out.base.ports[h.first].resistance;
       if (!fits)
-        desk_.faults.push_back(wording::other("tap", "/secondaries/" + std::to_string(place(w.name)), wording::quoted(w.name) + " as a tap of " + wording::quoted(h.name), "fewer volts and less resistance than the half it is a tap of"));
-      const bool fixed_end = !h.rail || h.rail->kind == supply::circuit::full_wave_centre_tap || h.rail->kind == supply::circuit::half_wave;
+        desk_.faults.push_back(wording::other("tap", "/secondaries/" + std::to_string(place(w.name)),
+                                              wording::quoted(w.name) + " as a tap of " + wording::quoted(h.name),
+                                              "fewer volts and less resistance than the half it is a tap of"));
+      const bool fixed_end = !h.rail || h.rail->kind == supply::circuit::full_wave_centre_tap ||
+                             h.rail->kind == supply::circuit::half_wave;
       if (!fixed_end && w.rail)
-        desk_.faults.push_back(wording::other("tap", "/secondaries/" + std::to_string(place(w.name)) + "/tap_of", "a rectified tap of a winding behind a " + std::string(word_of(h.rail->kind)), "a tap of a centre-tapped or half-wave winding, or a winding of its own"));
+        desk_.faults.push_back(
+            wording::other("tap", "/secondaries/" + std::to_string(place(w.name)) + "/tap_of",
+                           "a rectified tap of a winding behind a " + std::string(word_of(h.rail->kind)),
+                           "a tap of a centre-tapped or half-wave winding, or a winding of its own"));
       return h.first;
     }
-    desk_.faults.push_back(wording::other("unknown-word", "/secondaries/" + std::to_string(place(w.name)) + "/tap_of", wording::quoted(*w.tap_of), "another winding of the job that is no tap itself"));
+    desk_.faults.push_back(wording::other("unknown-word", "/secondaries/" + std::to_string(place(w.name)) + "/tap_of",
+                                          wording::quoted(*w.tap_of),
+                                          "another winding of the job that is no tap itself"));
     return std::nullopt;
   }
 
@@ -147,11 +164,13 @@ class builder {
     if (w.second && !w.halves_together) {
       s.second = s.first + 1;
       for (std::size_t half = 0; half < 2; ++half) {
-        out.base.ports.push_back({plain(half == 0 ? w.first : *w.second) / plain(primary_), w.resistance.size() == 2 ? w.resistance[half] : 1_ohm, std::nullopt, std::nullopt});
+        out.base.ports.push_back({plain(half == 0 ? w.first : *w.second) / plain(primary_),
+                                  w.resistance.size() == 2 ? w.resistance[half] : 1_ohm, std::nullopt, std::nullopt});
         own_.push_back(w.leakage.size() == 2 ? w.leakage[half] : 0_H);
       }
     } else {
-      out.base.ports.push_back({plain(whole) / plain(primary_), w.resistance.empty() ? 1_ohm : sum(w.resistance, 0_ohm), w.load, inside});
+      out.base.ports.push_back(
+          {plain(whole) / plain(primary_), w.resistance.empty() ? 1_ohm : sum(w.resistance, 0_ohm), w.load, inside});
       own_.push_back(sum(w.leakage, 0_H));
     }
     out.windings.push_back(std::move(s));
@@ -162,7 +181,9 @@ class builder {
     const bool contained = k != m && (ports[k].inside == m || ports[m].inside == k);
     const bool two_taps = k != m && ports[k].inside && ports[k].inside == ports[m].inside;
     if (k != m && !contained && !two_taps) return 0_H;
-    const henries own = k == m ? own_[k] : contained ? (ports[k].inside == m ? own_[k] : own_[m]) : std::min(own_[k], own_[m]);
+    const henries own = k == m      ? own_[k]
+                        : contained ? (ports[k].inside == m ? own_[k] : own_[m])
+                                    : std::min(own_[k], own_[m]);
     return own / (ports[k].ratio * ports[m].ratio);
   }
 
@@ -178,9 +199,11 @@ void read_transformer(reading_desk& desk, page& root, supply::network& net, volt
   const auto v = known->quantity<volts>("primary_voltage", "10 V", "1000 V");
   const auto r = known->quantity<ohms>("primary_resistance", "0 ohm", "10 kohm");
   if (!known->has("primary_voltage"))
-    desk.faults.push_back(wording::missing(known->place("primary_voltage"), "the volts that the no-load volts go with, such as \"230 V\""));
+    desk.faults.push_back(wording::missing(known->place("primary_voltage"),
+                                           "the volts that the no-load volts go with, such as \"230 V\""));
   if (!known->has("primary_resistance"))
-    desk.faults.push_back(wording::missing(known->place("primary_resistance"), "the primary's resistance, such as \"6.2 ohm\""));
+    desk.faults.push_back(
+        wording::missing(known->place("primary_resistance"), "the primary's resistance, such as \"6.2 ohm\""));
   primary = v.value_or(230_V);
   net.primary_resistance = r.value_or(0_ohm);
   net.primary_leakage = known->quantity<henries>("leakage_inductance", "0 H", "100 H").value_or(0_H);
@@ -193,7 +216,9 @@ void check_names(reading_desk& desk, const std::vector<known_winding>& all) {
   for (std::size_t i = 0; i < all.size(); ++i) {
     for (std::size_t j = 0; j < i; ++j) {
       if (all[i].name == all[j].name)
-        desk.faults.push_back(wording::other("repeated-name", "/secondaries/" + std::to_string(i) + "/name", wording::quoted(all[i].name) + " a second time", "a name of its own for every winding"));
+        desk.faults.push_back(wording::other("repeated-name", "/secondaries/" + std::to_string(i) + "/name",
+                                             wording::quoted(all[i].name) + " a second time",
+                                             "a name of its own for every winding"));
     }
   }
 }
@@ -215,7 +240,8 @@ known_supply read_known(std::string_view text, const std::string& origin, const 
   read_transformer(desk, root, out.supply.base, primary);
   settle_band(desk, mains, mains.wall.value_or(primary));
   std::vector<known_winding> windings;
-  if (!root.has("secondaries")) faults.push_back(wording::missing(root.place("secondaries"), "a list of secondary windings"));
+  if (!root.has("secondaries"))
+    faults.push_back(wording::missing(root.place("secondaries"), "a list of secondary windings"));
   root.each("secondaries", [&](const json& w, const std::string& where) {
     if (!w.is_object()) {
       faults.push_back(wording::wrong_sort(where, as_written(w), "a winding as an object in braces"));
@@ -226,9 +252,14 @@ known_supply read_known(std::string_view text, const std::string& origin, const 
   });
   if (root.has("secondaries") && windings.empty() && faults.empty())
     faults.push_back(wording::missing(root.place("secondaries"), "at least one winding"));
-  if (windings.size() > 24) faults.push_back(wording::other("out-of-range", root.place("secondaries"), std::to_string(windings.size()) + " windings", "24 at most"));
-  for (const char* key : {"primary", "valves", "order", "screens", "core", "former", "insulation", "wire", "limits", "duty", "aim", "prices"}) {
-    if (root.has(key)) faults.push_back(wording::other("either-or", root.place(key), "a section for a transformer to be made", "none of it beside \"known\""));
+  if (windings.size() > 24)
+    faults.push_back(wording::other("out-of-range", root.place("secondaries"),
+                                    std::to_string(windings.size()) + " windings", "24 at most"));
+  for (const char* key : {"primary", "valves", "order", "screens", "core", "former", "insulation", "wire", "limits",
+                          "duty", "aim", "prices"}) {
+    if (root.has(key))
+      faults.push_back(wording::other("either-or", root.place(key), "a section for a transformer to be made",
+                                      "none of it beside \"known\""));
   }
   refuse_later_parts(root);
   root.finish();
@@ -245,7 +276,8 @@ known_supply read_known(std::string_view text, const std::string& origin, const 
   net.source_resistance = mains.source.value_or(0_ohm);
   if (!mains.wall) desk.assume("/mains/voltage", written(primary), "the volts of the known primary");
   if (!mains.source) desk.assume("/mains/source_resistance", "0 ohm", "the known figures are taken as they are");
-  desk.assume("waveform", "a sine", "a wall with a flat top costs a capacitor-input rail 3 to 5 % of its volts at the same r.m.s. (memory)");
+  desk.assume("waveform", "a sine",
+              "a wall with a flat top costs a capacitor-input rail 3 to 5 % of its volts at the same r.m.s. (memory)");
   out.assumed = scratch.assumed;
   return out;
 }

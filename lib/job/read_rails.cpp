@@ -39,7 +39,8 @@ std::optional<supply::capacitor> read_capacitor(page& owner, const json& v, cons
     return value ? std::optional(supply::capacitor{*value, 0_ohm}) : std::nullopt;
   }
   if (!v.is_object()) {
-    owner.fault(wording::wrong_sort(where, as_written(v), "a capacitance such as \"32 uF\", or {\"value\", \"rated\", \"esr\"}"));
+    owner.fault(wording::wrong_sort(where, as_written(v),
+                                    "a capacitance such as \"32 uF\", or {\"value\", \"rated\", \"esr\"}"));
     return std::nullopt;
   }
   page c = owner.at(v, where);
@@ -65,7 +66,8 @@ void add_load(page& owner, const json& v, const std::string& where, node_load& s
       sum.constant = amperes_dc{sum.constant.plain() + *i};
     return;
   }
-  owner.fault(wording::wrong_sort(where, as_written(v), "a current such as \"8 mA\" or a resistance such as \"220 kohm\""));
+  owner.fault(
+      wording::wrong_sort(where, as_written(v), "a current such as \"8 mA\" or a resistance such as \"220 kohm\""));
 }
 
 node_load read_load(page& owner, const json& v, const std::string& where) {
@@ -100,7 +102,8 @@ void read_through(page& n, node_wish& out) {
   const auto ohm = through->quantity<ohms>("resistor", "1 mohm", "100 Mohm");
   const bool choke_there = through->has("choke"), resistor_there = through->has("resistor");
   if (choke_there == resistor_there) {
-    through->fault(wording::other("either-or", through->where(), choke_there ? "both a choke and a resistor" : "neither a choke nor a resistor",
+    through->fault(wording::other("either-or", through->where(),
+                                  choke_there ? "both a choke and a resistor" : "neither a choke nor a resistor",
                                   "{\"choke\": \"5 H\", \"resistance\": \"110 ohm\"} or {\"resistor\": \"10 kohm\"}"));
   }
   const auto copper = choke_there ? through->quantity<ohms>("resistance", "0 ohm", "1 Mohm") : std::nullopt;
@@ -113,7 +116,8 @@ node_wish read_node(page& n, std::size_t number) {
   node_wish out;
   out.name = n.text("node").value_or("");
   if (!n.has("node")) n.fault(wording::missing(n.place("node"), "a letter for the node, such as \"A\""));
-  if (out.name.size() > 20 || std::any_of(out.name.begin(), out.name.end(), [](char c) { return static_cast<unsigned char>(c) < 32 || c == 127; }))
+  if (out.name.size() > 20 || std::any_of(out.name.begin(), out.name.end(),
+                                          [](char c) { return static_cast<unsigned char>(c) < 32 || c == 127; }))
     n.fault(wording::other("bad-name", n.place("node"), wording::quoted(out.name), "a name of 1 to 20 characters"));
   read_through(n, out);
   if (const json* c = n.value("capacitor")) out.shunt = read_capacitor(n, *c, n.place("capacitor"), &out.rated);
@@ -123,7 +127,8 @@ node_wish read_node(page& n, std::size_t number) {
   const bool draws = plain(out.full.constant.plain()) > 0 || plain(out.idle.constant.plain()) > 0;
   if (draws && !n.has("capacitor") && std::holds_alternative<std::monostate>(out.through))
     n.fault(wording::other("wrong-sort", n.place("load"), "a constant current at a node without a capacitor",
-                           "a resistance, or a capacitor at the node", "nothing could feed it while the rectifier is off"));
+                           "a resistance, or a capacitor at the node",
+                           "nothing could feed it while the rectifier is off"));
   n.finish();
   return out;
 }
@@ -132,7 +137,8 @@ std::optional<rectifier_wish> named_rectifier(reading_desk& desk, const std::str
   try {
     const rectifier_type& t = desk.tools.valves.rectifier(name, where);
     if (!t.law) {
-      desk.faults.push_back(wording::other("unknown-name", where, wording::quoted(name), "a rectifier whose drop is known",
+      desk.faults.push_back(wording::other("unknown-name", where, wording::quoted(name),
+                                           "a rectifier whose drop is known",
                                            "give its law: {\"perveance\": \"1.9 mA/V^1.5\"} for each anode"));
       return std::nullopt;
     }
@@ -161,18 +167,22 @@ std::optional<rectifier_wish> written_law(page& r) {
     const auto saturation = r.quantity<amperes>("saturation_current", "1 fA", "1 mA");
     const auto slope = r.quantity<ohms>("resistance", "0 ohm", "100 kohm");
     const json* ideality = r.value("ideality");
-    const bool number = ideality && ideality->is_number() && ideality->get<double>() >= 0.5 && ideality->get<double>() <= 10;
+    const bool number =
+        ideality && ideality->is_number() && ideality->get<double>() >= 0.5 && ideality->get<double>() <= 10;
     if (!number)
-      r.fault(ideality ? wording::wrong_sort(r.place("ideality"), as_written(*ideality), "a plain number from 0.5 to 10, such as 1.8")
-                       : wording::missing(r.place("ideality"), "the ideality of the junction, a plain number such as 1.8"));
-    out.each.law = supply::exponential_law{saturation.value_or(as<amperes>(1e-9)), number ? ideality->get<double>() : 1.0,
-                                           slope.value_or(0_ohm)};
+      r.fault(ideality
+                  ? wording::wrong_sort(r.place("ideality"), as_written(*ideality),
+                                        "a plain number from 0.5 to 10, such as 1.8")
+                  : wording::missing(r.place("ideality"), "the ideality of the junction, a plain number such as 1.8"));
+    out.each.law = supply::exponential_law{saturation.value_or(as<amperes>(1e-9)),
+                                           number ? ideality->get<double>() : 1.0, slope.value_or(0_ohm)};
     ++ways;
   }
   if (r.has("perveance") && ways == 0) return std::nullopt;  // its own fault stands
   if (ways == 1) return out;
-  r.fault(wording::other("either-or", r.where(), ways == 0 ? "no law" : "more than one law",
-                         "a \"type\", a \"perveance\", a \"drop\" with \"resistance\", or a \"saturation_current\" with \"ideality\""));
+  r.fault(wording::other(
+      "either-or", r.where(), ways == 0 ? "no law" : "more than one law",
+      "a \"type\", a \"perveance\", a \"drop\" with \"resistance\", or a \"saturation_current\" with \"ideality\""));
   return std::nullopt;
 }
 
@@ -184,12 +194,15 @@ std::optional<rectifier_wish> read_rectifier(reading_desk& desk, page& w) {
   }
   if (v->is_string()) return named_rectifier(desk, v->get<std::string>(), w.place("rectifier"));
   if (!v->is_object()) {
-    w.fault(wording::wrong_sort(w.place("rectifier"), as_written(*v), "a type such as \"GZ34\" or \"silicon\", or an object with its law"));
+    w.fault(wording::wrong_sort(w.place("rectifier"), as_written(*v),
+                                "a type such as \"GZ34\" or \"silicon\", or an object with its law"));
     return std::nullopt;
   }
   page r = w.at(*v, w.place("rectifier"));
   const auto type = r.text("type");
-  std::optional<rectifier_wish> out = type ? named_rectifier(desk, *type, r.place("type")) : r.has("type") ? std::nullopt : written_law(r);
+  std::optional<rectifier_wish> out = type            ? named_rectifier(desk, *type, r.place("type"))
+                                      : r.has("type") ? std::nullopt
+                                                      : written_law(r);
   const auto series = r.quantity<ohms>("series", "0 ohm", "100 kohm");
   if (out && series) out->each.series = *series;
   r.finish();
@@ -218,17 +231,24 @@ farads usual_reservoir(const rail_wish& r, amperes load, volts winding, hertz ma
 void read_nodes(reading_desk& desk, page& w, rail_wish& out) {
   w.each("rail", [&](const json& v, const std::string& where) {
     if (!v.is_object()) {
-      desk.faults.push_back(wording::wrong_sort(where, as_written(v), "a node such as {\"node\": \"A\", \"capacitor\": \"32 uF\", \"load\": \"95 mA\"}"));
+      desk.faults.push_back(wording::wrong_sort(
+          where, as_written(v), "a node such as {\"node\": \"A\", \"capacitor\": \"32 uF\", \"load\": \"95 mA\"}"));
       return;
     }
     page n = w.at(v, where);
     node_wish node = read_node(n, out.nodes.size());
     if (std::any_of(out.nodes.begin(), out.nodes.end(), [&](const node_wish& o) { return o.name == node.name; }))
-      n.fault(wording::other("repeated-name", n.place("node"), wording::quoted(node.name) + " a second time", "a name of its own for every node"));
+      n.fault(wording::other("repeated-name", n.place("node"), wording::quoted(node.name) + " a second time",
+                             "a name of its own for every node"));
     out.nodes.push_back(std::move(node));
   });
-  if (out.nodes.empty()) desk.faults.push_back(wording::missing(w.place("rail"), "at least one node, such as {\"node\": \"A\", \"capacitor\": \"32 uF\", \"load\": \"95 mA\"}"));
-  if (out.nodes.size() > 24) desk.faults.push_back(wording::other("out-of-range", w.place("rail"), std::to_string(out.nodes.size()) + " nodes", "24 at most"));
+  if (out.nodes.empty())
+    desk.faults.push_back(wording::missing(
+        w.place("rail"),
+        "at least one node, such as {\"node\": \"A\", \"capacitor\": \"32 uF\", \"load\": \"95 mA\"}"));
+  if (out.nodes.size() > 24)
+    desk.faults.push_back(
+        wording::other("out-of-range", w.place("rail"), std::to_string(out.nodes.size()) + " nodes", "24 at most"));
 }
 
 void read_target(page& w, rail_wish& out) {
@@ -236,7 +256,8 @@ void read_target(page& w, rail_wish& out) {
   if (!target) return;
   const auto node = target->text("node");
   const auto at = target->quantity<volts>("voltage", "1 V", "10 kV");
-  if (!target->has("voltage")) target->fault(wording::missing(target->place("voltage"), "the volts wanted, such as \"330 V\""));
+  if (!target->has("voltage"))
+    target->fault(wording::missing(target->place("voltage"), "the volts wanted, such as \"330 V\""));
   std::vector<std::string> names;
   for (const node_wish& n : out.nodes) names.push_back(n.name);
   const std::string wanted = node.value_or(names.empty() ? "" : names.front());
@@ -251,14 +272,19 @@ void check_first_node(reading_desk& desk, page& w, const rail_wish& r) {
   const node_wish& first = r.nodes.front();
   const bool direct = std::holds_alternative<std::monostate>(first.through);
   if (r.kind == circuit::full_wave_doubler && (!direct || !first.shunt))
-    desk.faults.push_back(wording::other("circuit", w.place("rail") + "/0", "a first node without its capacitors",
-                                         "a full-wave doubler whose first node has a capacitor (each of the two) and nothing before it"));
+    desk.faults.push_back(
+        wording::other("circuit", w.place("rail") + "/0", "a first node without its capacitors",
+                       "a full-wave doubler whose first node has a capacitor (each of the two) and nothing before it"));
   if (r.kind == circuit::half_wave_doubler && !r.series)
-    desk.faults.push_back(wording::missing(w.place("series_capacitor"), "the capacitor in series with the winding, such as \"47 uF\""));
+    desk.faults.push_back(
+        wording::missing(w.place("series_capacitor"), "the capacitor in series with the winding, such as \"47 uF\""));
   if (r.kind != circuit::half_wave_doubler && r.series)
-    desk.faults.push_back(wording::other("circuit", w.place("series_capacitor"), "a series capacitor in another circuit", "one in a half-wave doubler alone"));
+    desk.faults.push_back(wording::other("circuit", w.place("series_capacitor"),
+                                         "a series capacitor in another circuit", "one in a half-wave doubler alone"));
   if (r.rectifier.type.sort == rectifier_sort::bridge && r.kind != circuit::bridge)
-    desk.faults.push_back(wording::other("circuit", w.place("rectifier"), "a bridge in a " + std::string(word_of(r.kind)) + " circuit", "single diodes, or the circuit bridge"));
+    desk.faults.push_back(wording::other("circuit", w.place("rectifier"),
+                                         "a bridge in a " + std::string(word_of(r.kind)) + " circuit",
+                                         "single diodes, or the circuit bridge"));
 }
 
 }  // namespace
@@ -277,15 +303,18 @@ std::optional<rail_wish> read_rail(reading_desk& desk, page& w, bool halves, vol
   const auto kind_read = read_circuit(w);
   if (!w.has("circuit")) {
     out.kind = halves ? circuit::full_wave_centre_tap : circuit::bridge;
-    desk.assume(w.pointer() + "/circuit", std::string(word_of(out.kind)), halves ? "a centre-tapped winding" : "a winding without a centre tap");
+    desk.assume(w.pointer() + "/circuit", std::string(word_of(out.kind)),
+                halves ? "a centre-tapped winding" : "a winding without a centre tap");
   }
   out.kind = kind_read.value_or(out.kind);
   out.negative = w.word("polarity", {"positive", "negative"}) == "negative";
   if (const auto r = read_rectifier(desk, w)) out.rectifier = *r;
-  if (const json* c = w.value("series_capacitor")) out.series = read_capacitor(w, *c, w.place("series_capacitor"), nullptr);
+  if (const json* c = w.value("series_capacitor"))
+    out.series = read_capacitor(w, *c, w.place("series_capacitor"), nullptr);
   const auto dc = w.quantity<amperes>("dc_current", "1 uA", "100 A");
   if (w.has("rail") && w.has("dc_current")) {
-    desk.faults.push_back(wording::other("either-or", w.where(), "both a rail and dc_current", "one of them: a rail has its loads at its nodes"));
+    desk.faults.push_back(wording::other("either-or", w.where(), "both a rail and dc_current",
+                                         "one of them: a rail has its loads at its nodes"));
   } else if (w.has("rail")) {
     read_nodes(desk, w, out);
   } else if (dc || guessed) {
@@ -294,17 +323,21 @@ std::optional<rail_wish> read_rail(reading_desk& desk, page& w, bool halves, vol
     const amperes load = dc ? *dc : *guessed;
     a.full.constant = a.idle.constant = amperes_dc{load};
     a.shunt = supply::capacitor{usual_reservoir(out, load, winding, desk.out.mains.frequency), 0_ohm};
-    desk.assume(w.pointer() + "/rail", "one node, " + shown(a.shunt->value, 2) + ", all of the load at it", "a usual reservoir; the worst case for the winding");
+    desk.assume(w.pointer() + "/rail", "one node, " + shown(a.shunt->value, 2) + ", all of the load at it",
+                "a usual reservoir; the worst case for the winding");
     if (!dc) desk.assume(w.pointer() + "/dc_current", shown(load), "a first guess from the list of valves");
     out.nodes = {a};
   } else if (!w.has("dc_current")) {
-    desk.faults.push_back(wording::missing(w.place("rail"), "a rail, or the direct current of the load as \"dc_current\""));
+    desk.faults.push_back(
+        wording::missing(w.place("rail"), "a rail, or the direct current of the load as \"dc_current\""));
   }
   read_target(w, out);
   check_first_node(desk, w, out);
   if (out.kind == circuit::bridge && halves) out.centre_tap_left = true;
   if (out.kind == circuit::full_wave_centre_tap && !halves && !out.target)
-    desk.faults.push_back(wording::other("circuit", w.place("circuit"), "a full-wave centre-tap circuit on a winding without a centre tap", "volts written as halves, such as \"300-0-300 V\"", "or the circuit \"bridge\""));
+    desk.faults.push_back(wording::other(
+        "circuit", w.place("circuit"), "a full-wave centre-tap circuit on a winding without a centre tap",
+        "volts written as halves, such as \"300-0-300 V\"", "or the circuit \"bridge\""));
   return desk.faults.size() == faults_before ? std::optional(out) : std::nullopt;
 }
 

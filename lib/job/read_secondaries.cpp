@@ -37,7 +37,8 @@ void read_rectified(reading_desk& desk, page& w, secondary_wish& out, bool has_v
   auto rail = read_rail(desk, w, halves, out.voltage, guess);
   if (!rail) return;
   if (rail->target && has_volts)
-    desk.faults.push_back(wording::other("either-or", w.where(), "both a target and the winding's volts", "one of them"));
+    desk.faults.push_back(
+        wording::other("either-or", w.where(), "both a target and the winding's volts", "one of them"));
   if (rail->target) {
     out.voltage = guessed_winding(*rail);
     if (rail->kind == supply::circuit::full_wave_centre_tap) out.second_half = out.voltage;
@@ -88,7 +89,8 @@ secondary_wish read_secondary(reading_desk& desk, page& w) {
                                              "or \"dc_current\" with a \"circuit\", or a list of valves for heaters"));
     out.current = amperes_rms{current.value_or(1_A)};
   }
-  w.not_yet("load", "a load as such, which belongs to a known transformer", "give \"current\", or a rail with loads at its nodes");
+  w.not_yet("load", "a load as such, which belongs to a known transformer",
+            "give \"current\", or a rail with loads at its nodes");
   w.not_yet("leakage_inductance", "the leakage of a winding that is still to be made");
   out.floats_on = w.text("floats_on");
   out.tap_of = w.text("tap_of");
@@ -143,9 +145,10 @@ void check_references(reading_desk& desk, const std::string& place) {
     const bool fixed_end = !host || !host->rail || host->rail->kind == supply::circuit::full_wave_centre_tap ||
                            host->rail->kind == supply::circuit::half_wave;
     if (!fixed_end && s.rail) {
-      desk.faults.push_back(wording::other("tap", here + "/tap_of", "a rectified tap of a winding behind a " + std::string(word_of(host->rail->kind)),
-                                           "a tap of a centre-tapped or half-wave winding, or a winding of its own",
-                                           "neither end of such a winding stays at earth"));
+      desk.faults.push_back(wording::other(
+          "tap", here + "/tap_of", "a rectified tap of a winding behind a " + std::string(word_of(host->rail->kind)),
+          "a tap of a centre-tapped or half-wave winding, or a winding of its own",
+          "neither end of such a winding stays at earth"));
     }
     if (host && (host->tap_of || s.voltage >= host->voltage)) {
       desk.faults.push_back(wording::other("tap", here,
@@ -169,12 +172,15 @@ void share_heaters(reading_desk& desk, const std::string& place) {
       if (&o != &s && !o.rail && there < whole * 1.02 && there > whole * 0.98) others += o.current.plain();
     }
     if (plain(load.current) <= plain(others)) {
-      desk.faults.push_back(wording::missing(here, "the r.m.s. current in the winding, such as \"3.1 A\"", "none of the listed valves has a heater for these volts that no other winding feeds"));
+      desk.faults.push_back(
+          wording::missing(here, "the r.m.s. current in the winding, such as \"3.1 A\"",
+                           "none of the listed valves has a heater for these volts that no other winding feeds"));
       s.current = amperes_rms{1_A};
       continue;
     }
     s.current = amperes_rms{load.current - others};
-    desk.assume("/secondaries/" + std::to_string(i) + "/current", shown(s.current.plain(), 4), "heaters of the listed valves, " + std::string(word_of(load.known_how)));
+    desk.assume("/secondaries/" + std::to_string(i) + "/current", shown(s.current.plain(), 4),
+                "heaters of the listed valves, " + std::string(word_of(load.known_how)));
   }
 }
 

@@ -14,8 +14,8 @@ struct reading_desk {
   const catalogue& tables;
   demand& out;
   std::vector<remark>& faults;
-  std::vector<valve_count> valves = {};          ///< the job's list
-  std::optional<ht_current_guess> draws = {};    ///< what they draw, roughly
+  std::vector<valve_count> valves = {};        ///< the job's list
+  std::optional<ht_current_guess> draws = {};  ///< what they draw, roughly
 
   /// Notes a default that was filled in.
   void assume(std::string path, std::string value, std::string why) {

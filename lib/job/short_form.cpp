@@ -54,7 +54,8 @@ ending read_ending(const std::vector<std::string>& words, std::size_t at, const 
                                       "after the current only: rms, dc, ct or a rectifier"));
   }
   if (e.rms && !e.rectifier.empty())
-    faults.push_back(wording::other("either-or", where, "a rectifier behind an r.m.s. current", "dc behind the current, or no rectifier"));
+    faults.push_back(wording::other("either-or", where, "a rectifier behind an r.m.s. current",
+                                    "dc behind the current, or no rectifier"));
   if (e.dc && e.rms) faults.push_back(wording::other("either-or", where, "both dc and rms", "one of them"));
   return e;
 }

@@ -49,8 +49,8 @@ std::vector<load_ratio> ratios_of(const demand& d, const draft& f, const running
     const volts open = r.electric.ports[k].no_load.plain();
     double found = plain(r.electric.ports[k].on_load.plain()) / plain(open);
     if (has_target(w)) {
-      // Rail volts rise with the winding's, less a part lost in rectifier and chain: some 8 % of them for a start, which
-      // only sets how fast the rounds close in.
+      // Rail volts rise with the winding's, less a part lost in rectifier and chain: some 8 % of them for a start,
+      // which only sets how fast the rounds close in.
       const double wanted = plain(w.rail->target->at.plain()), lost = 0.08 * wanted;
       const double there = std::max(plain(at_target(d, ports[k].secondary, r)), 0.2 * wanted);
       const volts needed = open * ((wanted + lost) / (there + lost));

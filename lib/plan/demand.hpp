@@ -46,11 +46,11 @@ struct primary_wish {
 
 struct secondary_wish {
   std::string name;
-  volts voltage;                     ///< with a target a first guess; of the whole winding, or of the first half of a centre-tapped one
+  volts voltage;  ///< with a target a first guess; of the whole winding, or of the first half of a centre-tapped one
   std::optional<volts> second_half;  ///< present where the winding is written as halves, each with a load of its own
   bool centre_tap = false;           ///< a tap in the middle of a winding loaded as a whole
   bool no_load = false;              ///< the volts are meant without load
-  amperes_rms current;  ///< of a winding with a rail a first guess: the solved one replaces it
+  amperes_rms current;               ///< of a winding with a rail a first guess: the solved one replaces it
   std::optional<rail_wish> rail;
   std::optional<amperes_rms> rated;  ///< r.m.s. current that the job gives a winding with a rail
   bool kind_left_open = false;       ///< the job says neither rms nor dc

@@ -121,7 +121,7 @@ struct design {
   std::vector<planned_pair> pairs;
   std::vector<planned_setting> settings;
   supply_study supply;  ///< rails, and volts at every state of load and mains
-  no_load_state idle;  ///< secondaries open, nominal mains
+  no_load_state idle;   ///< secondaries open, nominal mains
   teslas flux_nominal, flux_on_load, flux_high;
   planned_heat heat_high, heat_nominal;
   kelvins surface_rule;  ///< cross-check of the rise at high mains

@@ -173,8 +173,8 @@ potential working_volts(const demand& d, const turn_set& n, const coil_role& rol
   if (wish.floats_on && named_secondary(d, *wish.floats_on, host)) {
     const secondary_turns& h = n.secondaries[host];
     const auto& rail = d.secondaries[host].rail;
-    const bool twice = rail && (rail->kind == supply::circuit::full_wave_doubler ||
-                                rail->kind == supply::circuit::half_wave_doubler);
+    const bool twice =
+        rail && (rail->kind == supply::circuit::full_wave_doubler || rail->kind == supply::circuit::half_wave_doubler);
     p.dc = volts_dc{peak_of_sine(volts_rms{as<volts>(per_turn * std::max(h.first, h.second).count())}).plain() *
                     (twice ? 2.0 : 1.0)};
   }

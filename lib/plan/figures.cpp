@@ -41,9 +41,8 @@ class assembly {
       : d_(d), s_(s), out_(d, std::move(a)), ports_(ports_of(d, out_.made.coil)) {}
 
   design finish() {
-    out_.supply = study(supply_of(d_, coil(), nominal()), [&](std::size_t i) {
-      return 1.0 / coil().n.secondaries[i].first.count();
-    });
+    out_.supply = study(supply_of(d_, coil(), nominal()),
+                        [&](std::size_t i) { return 1.0 / coil().n.secondaries[i].first.count(); });
     resistive_ = resistive_volts(network_at(out_.supply.of, load_state::full, 1.0), nominal().electric);
     out_.turns_per_volt = turns_in_use(at(), coil().n.primary).count() / plain(d_.primary.on);
     for (std::size_t i = 0; i < coil().coils.size(); ++i) {

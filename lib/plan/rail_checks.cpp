@@ -21,16 +21,15 @@ std::string said(const Stated& q) {
 
 std::string rail_name(const planned_rail& r) { return "rail " + r.winding; }
 
-bool choke_input(const planned_rail& r) {
-  return std::holds_alternative<supply::choke>(r.wish.nodes.front().through);
-}
+bool choke_input(const planned_rail& r) { return std::holds_alternative<supply::choke>(r.wish.nodes.front().through); }
 
 // A rating against what was found; what breaks it comes at `weight`.
 void against_rating(std::vector<check>& all, const planned_rail& r, const std::string& what, double found, double bound,
                     kind k, level weight, const std::string& cure) {
   const bool holds = found <= bound * (1 + 1e-9);
-  all.push_back({"rectifier-limits", holds ? level::pass : weight, r.wish.rectifier.type.name + " in " + rail_name(r) + ": " + what,
-                 shown_plain(found, k), "at most " + shown_plain(bound, k), holds ? "" : cure});
+  all.push_back({"rectifier-limits", holds ? level::pass : weight,
+                 r.wish.rectifier.type.name + " in " + rail_name(r) + ": " + what, shown_plain(found, k),
+                 "at most " + shown_plain(bound, k), holds ? "" : cure});
 }
 
 // A resistor in each anode: what it has to be and what it gets warm with.
@@ -52,14 +51,16 @@ void add_rectifier_limits(const planned_rail& r, std::vector<check>& all) {
   if (t.direct_current) {
     const bool whole = valve || t.sort == rectifier_sort::bridge;
     const double load = plain(r.worst.average.plain()) * (whole && r.wish.kind != circuit::half_wave ? 2 : 1);
-    against_rating(all, r, whole ? "direct current" : "average current", load, plain((*t.direct_current).plain()), kind::current,
-                   level::stop, valve ? "a larger rectifier valve, or two in parallel each with its own series resistors"
-                                      : "a larger diode");
+    against_rating(
+        all, r, whole ? "direct current" : "average current", load, plain((*t.direct_current).plain()), kind::current,
+        level::stop,
+        valve ? "a larger rectifier valve, or two in parallel each with its own series resistors" : "a larger diode");
   }
   if (t.peak_inverse) {
     against_rating(all, r, "peak inverse at the highest mains without load", plain(r.inverse_worst.plain()),
                    plain((*t.peak_inverse).plain()), kind::voltage, level::stop,
-                   valve ? "fewer volts, or a rectifier that stands them" : "two or more such diodes in series, or a type that stands them");
+                   valve ? "fewer volts, or a rectifier that stands them"
+                         : "two or more such diodes in series, or a type that stands them");
   }
   const auto& reservoir = r.wish.nodes.front().shunt;
   if (!valve || choke_input(r) || !reservoir) return;
@@ -85,7 +86,8 @@ void add_capacitors(const planned_rail& r, std::vector<check>& all) {
     if (!n.wish.shunt) continue;
     const bool halved = &n == &r.nodes.front() && r.wish.kind == circuit::full_wave_doubler;
     const volts stands = n.switch_on.plain() * (halved ? 0.5 : 1.0);
-    const std::string what = "capacitor at node " + n.wish.name + " of " + rail_name(r) + ", valves cold at the highest mains";
+    const std::string what =
+        "capacitor at node " + n.wish.name + " of " + rail_name(r) + ", valves cold at the highest mains";
     if (!n.wish.rated) {
       all.push_back({"capacitor-rating", level::note, what, shown(stands), "no rating is given",
                      "a part rated for " + shown(stands, 3) + " or more"});
@@ -95,12 +97,17 @@ void add_capacitors(const planned_rail& r, std::vector<check>& all) {
     const level weight = over <= 1 ? level::pass : over <= surge ? level::caution : level::stop;
     all.push_back({"capacitor-rating", weight, what, shown(stands),
                    shown(*n.wish.rated) + " rated, " + percent(surge - 1, 0) + " more as a surge (recalled)",
-                   weight == level::pass ? "" : "a part rated for " + shown(stands, 3) + " or more, two in series with sharing resistors, or an indirectly heated rectifier"});
+                   weight == level::pass
+                       ? ""
+                       : "a part rated for " + shown(stands, 3) +
+                             " or more, two in series with sharing resistors, or an indirectly heated rectifier"});
   }
   const planned_node& first = r.nodes.front();
   if (first.wish.shunt) {
-    all.push_back({"capacitor-ripple", level::note, "ripple current of the capacitor at node " + first.wish.name + " of " + rail_name(r),
-                   said(first.full.capacitor_ripple) + " r.m.s.", "its maker's figure at twice the mains frequency", ""});
+    all.push_back({"capacitor-ripple", level::note,
+                   "ripple current of the capacitor at node " + first.wish.name + " of " + rail_name(r),
+                   said(first.full.capacitor_ripple) + " r.m.s.", "its maker's figure at twice the mains frequency",
+                   ""});
   }
 }
 
@@ -113,11 +120,16 @@ void add_choke_input(const amplifier_supply& a, const planned_rail& r, std::vect
   // Critical current of a full-wave choke: volts over 3 x 2 pi f L (common practice; the first ripple term of a
   // rectified sine).
   const amperes critical = idle / (3.0 * reactance(a.base.frequency, l.value));
-  check c{"choke-input", level::pass, "least current in the input choke of " + rail_name(r) + " at idle",
-          shown(r.choke_lowest_idle), "more than nothing: below " + shown(critical) + " of load the volts climb towards the peak", ""};
+  check c{"choke-input",
+          level::pass,
+          "least current in the input choke of " + rail_name(r) + " at idle",
+          shown(r.choke_lowest_idle),
+          "more than nothing: below " + shown(critical) + " of load the volts climb towards the peak",
+          ""};
   if (runs_dry) {
     const volts peak = peak_of_sine(r.each_anode).plain() * (1 + a.over_ratio);
-    const bool stands = std::all_of(r.nodes.begin(), r.nodes.end(), [&](const planned_node& n) { return n.wish.rated && *n.wish.rated >= peak; });
+    const bool stands = std::all_of(r.nodes.begin(), r.nodes.end(),
+                                    [&](const planned_node& n) { return n.wish.rated && *n.wish.rated >= peak; });
     c.weight = stands ? level::caution : level::stop;
     const amperes missing = std::max(critical * 1.05 - now, 1_mA);
     c.cure = "a bleeder of " + shown(idle / missing, 2) + " that dissipates " + shown(idle * missing, 2) +
@@ -149,15 +161,18 @@ void add_dc_in_iron(const supply_study& s, std::vector<check>& all) {
   const double part = plain(dc) / plain(magnetising);
   if (part <= 0.01) return;
   const level weight = part > 0.5 ? level::stop : part > 0.1 ? level::caution : level::note;
-  all.push_back({"dc-in-iron", weight, what + ", against the magnetising current's peak",
-                 shown(dc) + " (" + percent(part, 0) + ")", shown(magnetising),
-                 weight == level::note ? "" : "full-wave rectification, or a second half-wave rail of the other polarity"});
+  all.push_back(
+      {"dc-in-iron", weight, what + ", against the magnetising current's peak",
+       shown(dc) + " (" + percent(part, 0) + ")", shown(magnetising),
+       weight == level::note ? "" : "full-wave rectification, or a second half-wave rail of the other polarity"});
 }
 
 void add_circuit(const planned_rail& r, std::vector<check>& all) {
   if (!r.wish.centre_tap_left) return;
   all.push_back({"centre-tap-circuit", level::stop,
-                 "winding " + r.winding + " has a centre tap and feeds a bridge: the whole winding is rectified, and a tap that is earthed shorts half the bridge",
+                 "winding " + r.winding +
+                     " has a centre tap and feeds a bridge: the whole winding is rectified, and a tap that is earthed "
+                     "shorts half the bridge",
                  "bridge", "full-wave centre-tap, or a winding without a tap",
                  "use the full-wave centre-tap circuit; or leave the tap out, or insulate it for half the HT"});
 }
@@ -169,15 +184,20 @@ void add_loads(const supply_study& s, std::vector<check>& all) {
       if (plain(n.wish.full.constant.plain()) <= 0) continue;
       const bool sinks = n.full.mean.plain() < 0.2 * r.each_anode.plain();
       if (sinks)
-        all.push_back({"load-beyond-supply", level::stop, "node " + n.wish.name + " of " + rail_name(r) + " cannot give what is drawn",
-                       said(n.full.mean), "at least " + shown(0.2 * r.each_anode.plain()), "less load, or less resistance before the node"});
+        all.push_back({"load-beyond-supply", level::stop,
+                       "node " + n.wish.name + " of " + rail_name(r) + " cannot give what is drawn", said(n.full.mean),
+                       "at least " + shown(0.2 * r.each_anode.plain()),
+                       "less load, or less resistance before the node"});
     }
   }
-  const auto unsettled = std::find_if(s.states.begin(), s.states.end(), [](const supplied_state& x) { return !x.settled; });
+  const auto unsettled =
+      std::find_if(s.states.begin(), s.states.end(), [](const supplied_state& x) { return !x.settled; });
   if (unsettled != s.states.end())
     all.push_back({"load-beyond-supply", level::caution,
-                   "no periodic state was found at " + std::string(word_of(unsettled->load)) + " load and " + unsettled->mains + " mains; its figures are not to be trusted",
-                   "residual " + shortest(rounded_to(s.full.residual_ratio, 2)), "0.0001", "look at the loads and values of the rails"});
+                   "no periodic state was found at " + std::string(word_of(unsettled->load)) + " load and " +
+                       unsettled->mains + " mains; its figures are not to be trusted",
+                   "residual " + shortest(rounded_to(s.full.residual_ratio, 2)), "0.0001",
+                   "look at the loads and values of the rails"});
 }
 
 void add_targets(const planned_rail& r, std::vector<check>& all) {
@@ -186,7 +206,10 @@ void add_targets(const planned_rail& r, std::vector<check>& all) {
   const double turn = r.one_turn ? plain(*r.one_turn) : 0;
   const bool near = turn > 0 ? std::abs(off) <= 0.5 * turn : std::abs(off) <= 0.01 * wanted;
   const bool good = near || std::abs(off) <= 0.02 * wanted;
-  all.push_back({"ht-volts", near ? level::pass : good ? level::note : level::stop,
+  all.push_back({"ht-volts",
+                 near   ? level::pass
+                 : good ? level::note
+                        : level::stop,
                  "volts of node " + r.wish.target->node + " of " + rail_name(r) + " at full load, nominal mains" +
                      (turn > 0 ? "; one turn more (of each half) would add " + shown(*r.one_turn, 2) : ""),
                  shown(r.wish.target->at.plain() + *r.off_target, 4) + " (" + signed_percent(off / wanted) + ")",
@@ -202,7 +225,8 @@ void add_ratings(const supply_study& s, std::vector<check>& all) {
     const bool holds = found <= *w.rated;
     all.push_back({"current-kind", holds ? level::pass : level::stop,
                    "r.m.s. current of " + w.name + " behind its rectifier against the rating that the job gives it",
-                   said(found), said(*w.rated), holds ? "" : "a rating of " + said(found) + " r.m.s.; direct milliamperes are no rating"});
+                   said(found), said(*w.rated),
+                   holds ? "" : "a rating of " + said(found) + " r.m.s.; direct milliamperes are no rating"});
   }
 }
 
@@ -230,10 +254,13 @@ std::vector<check> in_order(std::vector<check> all) {
 
 std::vector<std::string> supply_cautions() {
   return {
-      "Mains and HT kill. A reservoir holds its charge after switching off: discharge it through a resistor and measure "
+      "Mains and HT kill. A reservoir holds its charge after switching off: discharge it through a resistor and "
+      "measure "
       "before touching.",
-      "Wiring and testing are for people trained to do it, under the local code and, where the law asks for it, a licence.",
-      "Figures are computed from the values given and from published ratings, some of them recalled; confirm a rating that a "
+      "Wiring and testing are for people trained to do it, under the local code and, where the law asks for it, a "
+      "licence.",
+      "Figures are computed from the values given and from published ratings, some of them recalled; confirm a rating "
+      "that a "
       "part's life hangs on by its data sheet.",
   };
 }

@@ -29,7 +29,8 @@ node_load load_at(const node_wish& n, load_state s) {
 supply::rail circuit_of(const supplied_winding& w, load_state s) {
   const rail_wish& wish = *w.rail;
   const bool two = wish.kind == circuit::full_wave_centre_tap;
-  supply::rail r{wish.kind, w.first, two ? w.second : std::nullopt, wish.rectifier.each, wish.negative, wish.series, {}};
+  supply::rail r{wish.kind,   w.first, two ? w.second : std::nullopt, wish.rectifier.each, wish.negative,
+                 wish.series, {}};
   for (const node_wish& n : wish.nodes) {
     const node_load load = load_at(n, s);
     r.nodes.push_back({n.through, n.shunt, load.constant, load.resistance});
@@ -39,10 +40,14 @@ supply::rail circuit_of(const supplied_winding& w, load_state s) {
 
 // The worse of two diodes, figure by figure.
 supply::diode_state worse(const supply::diode_state& a, const supply::diode_state& b) {
-  return {std::max(a.peak, b.peak),       std::max(a.average, b.average),
-          std::max(a.rms, b.rms),         std::max(a.inverse, b.inverse),
-          std::max(a.mean_drop, b.mean_drop), std::max(a.conduction_deg, b.conduction_deg),
-          std::max(a.loss, b.loss),       std::max(a.series_loss, b.series_loss)};
+  return {std::max(a.peak, b.peak),
+          std::max(a.average, b.average),
+          std::max(a.rms, b.rms),
+          std::max(a.inverse, b.inverse),
+          std::max(a.mean_drop, b.mean_drop),
+          std::max(a.conduction_deg, b.conduction_deg),
+          std::max(a.loss, b.loss),
+          std::max(a.series_loss, b.series_loss)};
 }
 
 // Peak inverse of each diode without load over the r.m.s. volts of what feeds an anode: exact for an ideal transformer.
@@ -79,8 +84,7 @@ planned_rail figures_of_rail(const amplifier_supply& a, const supplied_winding& 
   }
   r.anode_resistance = least;
   r.each_anode = largest;
-  r.inverse_worst =
-      volts_peak{largest.plain() * ((1 + a.over_ratio) * inverse_over_rms(w.rail->kind))};
+  r.inverse_worst = volts_peak{largest.plain() * ((1 + a.over_ratio) * inverse_over_rms(w.rail->kind))};
   return r;
 }
 
@@ -191,8 +195,9 @@ supply_study study(const amplifier_supply& a, const std::function<double(std::si
     for (const auto& [mains, ratio_of_mains] : {std::pair{"low", low}, {"nominal", 1.0}, {"high", high}}) {
       const bool nominal = ratio_of_mains == 1.0;
       const supply::network net = network_at(a, load, ratio_of_mains);
-      const supply::state s = net.rails.empty() ? supply::solve(net)
-                                                : supply::solve_periodic(net, {192, nominal && load == load_state::full});
+      const supply::state s = net.rails.empty()
+                                  ? supply::solve(net)
+                                  : supply::solve_periodic(net, {192, nominal && load == load_state::full});
       out.states.push_back(state_at(a, load, mains, s));
       if (nominal && load == load_state::full) out.full = s;
       if (nominal && load == load_state::idle) idle_nominal = s;

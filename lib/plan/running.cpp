@@ -145,8 +145,7 @@ class settling {
     for (std::size_t k = 0; k < parts_.ports.size(); ++k)
       port_hot_.push_back(hot(parts_.ports[k].coil, parts_.port_20[k]));
     solver_.set_resistances(r_.share.resistance, port_hot_);
-    r_.flux_density =
-        peak_flux_density(volts_rms{emf_}, d_.mains.frequency, parts_.primary_turns, f_.core.net_area());
+    r_.flux_density = peak_flux_density(volts_rms{emf_}, d_.mains.frequency, parts_.primary_turns, f_.core.net_area());
     r_.magnetising = f_.core.magnetising_current(r_.flux_density, parts_.primary_turns);
     r_.core_loss_resistance = emf_ * emf_ / f_.core.loss(r_.flux_density, d_.mains.frequency);
     r_.magnetising_inductance = inductance_of(emf_ / r_.magnetising.plain(), d_.mains.frequency);

@@ -7,9 +7,7 @@ namespace {
 
 std::string at(double x) { return fixed(x, 1); }
 
-std::string_view class_of(stroke s) {
-  return s == stroke::thin ? "thin" : s == stroke::thick ? "thick" : "dashed";
-}
+std::string_view class_of(stroke s) { return s == stroke::thin ? "thin" : s == stroke::thick ? "thick" : "dashed"; }
 
 }  // namespace
 
@@ -40,9 +38,10 @@ std::string escaped(std::string_view text) {
 }
 
 drawing::drawing(double wide, double high, std::string_view title, std::string_view description) {
-  head_ = "<svg xmlns=\"http://www.w3.org/2000/svg\" viewBox=\"0 0 " + at(wide) + " " + at(high) + "\" width=\"" + at(wide) +
-          "\" height=\"" + at(high) + "\" role=\"img\" aria-labelledby=\"title description\">\n<title id=\"title\">" +
-          escaped(title) + "</title>\n<desc id=\"description\">" + escaped(description) +
+  head_ = "<svg xmlns=\"http://www.w3.org/2000/svg\" viewBox=\"0 0 " + at(wide) + " " + at(high) + "\" width=\"" +
+          at(wide) + "\" height=\"" + at(high) +
+          "\" role=\"img\" aria-labelledby=\"title description\">\n<title id=\"title\">" + escaped(title) +
+          "</title>\n<desc id=\"description\">" + escaped(description) +
           "</desc>\n<style>text{font:12px sans-serif;fill:#111}.strong{font-weight:bold}"
           ".box{fill:none;stroke:#777;stroke-width:1}.rule{stroke:#ccc;stroke-width:1}"
           ".thin{fill:none;stroke:#0b5a8f;stroke-width:1.2}.thick{fill:none;stroke:#111;stroke-width:2}"
@@ -57,11 +56,13 @@ void drawing::text(double x, double y, std::string_view words, anchor a, bool st
 }
 
 void drawing::box(double x, double y, double wide, double high) {
-  body_ += "<rect class=\"box\" x=\"" + at(x) + "\" y=\"" + at(y) + "\" width=\"" + at(wide) + "\" height=\"" + at(high) + "\"/>\n";
+  body_ += "<rect class=\"box\" x=\"" + at(x) + "\" y=\"" + at(y) + "\" width=\"" + at(wide) + "\" height=\"" +
+           at(high) + "\"/>\n";
 }
 
 void drawing::rule(double x1, double y1, double x2, double y2) {
-  body_ += "<line class=\"rule\" x1=\"" + at(x1) + "\" y1=\"" + at(y1) + "\" x2=\"" + at(x2) + "\" y2=\"" + at(y2) + "\"/>\n";
+  body_ += "<line class=\"rule\" x1=\"" + at(x1) + "\" y1=\"" + at(y1) + "\" x2=\"" + at(x2) + "\" y2=\"" + at(y2) +
+           "\"/>\n";
 }
 
 void drawing::curve(const std::vector<point>& points, stroke look) {

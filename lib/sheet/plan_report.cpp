@@ -280,8 +280,8 @@ std::string workings_part(const design& p) {
 
 std::string report_of(const design& p, bool workings) {
   std::string out = head(p) + core_part(p) + winding_table(p) + ends_part(p) + electric_table(p);
-  out += settings_part(p) + rails_text(p.supply) + states_text(p.supply) + power_part(p) + pairs_part(p) + tests_part(p) + materials_part(p) +
-         checks_part(p);
+  out += settings_part(p) + rails_text(p.supply) + states_text(p.supply) + power_part(p) + pairs_part(p) +
+         tests_part(p) + materials_part(p) + checks_part(p);
   if (workings) out += workings_part(p);
   out += assumed_part(p) + standing_part(p) + "Cautions\n";
   for (const std::string& c : p.cautions) out += wrapped(c, "  ");

@@ -87,10 +87,14 @@ std::string waveform_svg(const supply_study& s) {
   constexpr double volts_high = 150, amps_high = 90, step = volts_high + amps_high + 2 * gap;
   const double high = head + step * static_cast<double>(s.rails.size()) + amps_high + gap + 40;
   drawing d(780, high, "Waveforms of " + s.of.title,
-            "One mains cycle at full load and nominal mains: for each rail the winding's volts with those of its first node, and the "
+            "One mains cycle at full load and nominal mains: for each rail the winding's volts with those of its first "
+            "node, and the "
             "current of each rectifier; at the foot the line current.");
   d.text(left, 22, s.of.title, anchor::start, true);
-  d.text(left, 38, "one cycle of " + written(s.of.base.mains.plain()) + " " + written(s.of.base.frequency) + " at full load, from the rising zero of the mains", anchor::start);
+  d.text(left, 38,
+         "one cycle of " + written(s.of.base.mains.plain()) + " " + written(s.of.base.frequency) +
+             " at full load, from the rising zero of the mains",
+         anchor::start);
   double top = head + 20;
   std::vector<std::vector<double>> kept;
   kept.reserve(2 * s.rails.size());
@@ -100,11 +104,14 @@ std::string waveform_svg(const supply_study& s) {
     kept.push_back(signed_as(rail.reservoir_v, r.wish.negative));
     const bool half = r.wish.kind == supply::circuit::full_wave_centre_tap;
     field(d, top, volts_high, "Rail " + r.winding + ", volts", "V",
-          {{half ? "first half" : "winding", &rail.winding_v, stroke::thin}, {"node " + r.wish.nodes.front().name, &kept.back(), stroke::thick}}).draw();
+          {{half ? "first half" : "winding", &rail.winding_v, stroke::thin},
+           {"node " + r.wish.nodes.front().name, &kept.back(), stroke::thick}})
+        .draw();
     top += volts_high + gap;
     std::vector<line> lines;
     for (std::size_t n = 0; n < rail.diode_a.size(); ++n)
-      lines.push_back({(half ? "anode " : "diode ") + std::to_string(n + 1), &rail.diode_a[n], n == 0 ? stroke::thick : stroke::dashed});
+      lines.push_back({(half ? "anode " : "diode ") + std::to_string(n + 1), &rail.diode_a[n],
+                       n == 0 ? stroke::thick : stroke::dashed});
     field(d, top, amps_high, "Rail " + r.winding + ", rectifier current", "A", lines).draw();
     top += amps_high + gap;
   }

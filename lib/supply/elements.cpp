@@ -19,10 +19,10 @@ junction junction_of(const diode& d, double halves) {
   const double series = plain(d.series) * halves;
   if (const auto* line = std::get_if<drop_law>(&d.law)) {
     const double r = std::max(plain(line->resistance) * halves, 1e-3);
-    return {law::line, plain(line->drop) * halves, 1 / r, 0, 0, series, halves};
+    return {law::line, plain(line->drop) * halves, 1 / r, 0, 0, 0, series, halves};
   }
   if (const auto* valve = std::get_if<valve_law>(&d.law)) {
-    return {law::three_halves, 0, plain(valve->k) / std::pow(halves, 1.5), 0, 0, series, halves};
+    return {law::three_halves, 0, plain(valve->k) / std::pow(halves, 1.5), 0, 0, 0, series, halves};
   }
   const auto& e = std::get<exponential_law>(d.law);
   const double unit = e.ideality * thermal_volts_300K * halves, own = plain(e.resistance) * halves;
@@ -31,6 +31,7 @@ junction junction_of(const diode& d, double halves) {
           unit * std::log1p(least_seen / plain(e.saturation)),
           plain(e.saturation),
           unit,
+          least_seen + plain(e.saturation),
           own,
           series + own,
           halves};
@@ -80,6 +81,8 @@ class numbering {
     e_.l.assign(all * all, 0);
     for (std::size_t k = 0; k < all; ++k) {
       const port& p = net_.ports[k];
+      if (p.inside && (*p.inside >= all || *p.inside == k))
+        throw std::logic_error("a tap of a port that does not exist");
       e_.ports.push_back({sign_[k] * p.ratio, p.load ? 1 / std::max(plain(*p.load), least_r) : 0, e_.nodes++, ground,
                           -1, p.inside ? static_cast<int>(*p.inside) : -1});
       for (std::size_t m = 0; m < all; ++m) {

@@ -18,6 +18,8 @@ struct junction {
   law kind;
   double threshold;  // below it the diode is off [V]
   double a, b;       // line: slope 1/r; three_halves: k; exponential: saturation current, n kT/q
+  double off;        // exponential: its law at the threshold, which counts as nothing [A]: a law with a step there may
+                     // have no solution
   double own_r;      // of an exponential diode, part of `series` [ohm]
   double series;     // in series, resistor and own_r [ohm]
   double halves;     // diodes that this one stands for: 2 in a bridge

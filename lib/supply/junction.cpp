@@ -21,9 +21,8 @@ inline point law_at(const junction& j, double v) {
       return {root * v, 1.5 * root};
     }
     case law::exponential: {
-      // Less the little that counts as off: a law with a step at its threshold may have no solution there.
       const double e = j.a * std::exp(std::min(v / j.b, 200.0));
-      return {e - j.a * std::exp(j.threshold / j.b), e / j.b};
+      return {e - j.off, e / j.b};
     }
   }
   return {0, 0};
