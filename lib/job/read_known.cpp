@@ -238,7 +238,7 @@ known_supply read_known(std::string_view text, const std::string& origin, const 
   const mains_read mains = read_mains(desk, root);
   volts primary = 230_V;
   read_transformer(desk, root, out.supply.base, primary);
-  settle_band(desk, mains, mains.wall.value_or(primary));
+  settle_band(desk, mains, primary);
   std::vector<known_winding> windings;
   if (!root.has("secondaries"))
     faults.push_back(wording::missing(root.place("secondaries"), "a list of secondary windings"));

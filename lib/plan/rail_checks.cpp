@@ -82,6 +82,7 @@ void add_rectifier_limits(const planned_rail& r, std::vector<check>& all) {
 double surge_over_rated(volts rated) { return plain(rated) <= 315 ? 1.15 : 1.10; }
 
 void add_capacitors(const planned_rail& r, std::vector<check>& all) {
+  std::string unrated;
   for (const planned_node& n : r.nodes) {
     if (!n.wish.shunt) continue;
     const bool halved = &n == &r.nodes.front() && r.wish.kind == circuit::full_wave_doubler;
@@ -89,8 +90,7 @@ void add_capacitors(const planned_rail& r, std::vector<check>& all) {
     const std::string what =
         "capacitor at node " + n.wish.name + " of " + rail_name(r) + ", valves cold at the highest mains";
     if (!n.wish.rated) {
-      all.push_back({"capacitor-rating", level::note, what, shown(stands), "no rating is given",
-                     "a part rated for " + shown(stands, 3) + " or more"});
+      unrated += (unrated.empty() ? "" : ", ") + n.wish.name + " " + shown(stands);
       continue;
     }
     const double over = plain(stands) / plain(*n.wish.rated), surge = surge_over_rated(*n.wish.rated);
@@ -102,6 +102,11 @@ void add_capacitors(const planned_rail& r, std::vector<check>& all) {
                        : "a part rated for " + shown(stands, 3) +
                              " or more, two in series with sharing resistors, or an indirectly heated rectifier"});
   }
+  if (!unrated.empty())
+    all.push_back({"capacitor-rating", level::note,
+                   "capacitors of " + rail_name(r) +
+                       " without a rating in the job: what each has to stand, valves cold at the highest mains",
+                   unrated, "a rating of so many volts or more", ""});
   const planned_node& first = r.nodes.front();
   if (first.wish.shunt) {
     all.push_back({"capacitor-ripple", level::note,

@@ -62,14 +62,16 @@ std::vector<std::size_t> rectified(const amplifier_supply& a) {
 }
 
 planned_rail figures_of_rail(const amplifier_supply& a, const supplied_winding& w, const supply::state& full,
-                             const supply::state& idle, const supply::surge_state& surge, std::size_t number) {
+                             const supply::state& idle, const supply::state& cold_high,
+                             const supply::surge_state& surge, std::size_t number) {
   planned_rail r;
   r.winding = w.name;
   r.wish = *w.rail;
   const supply::rail_state &at_full = full.rails[number], &at_idle = idle.rails[number];
   r.ripple_per_cycle = at_full.ripple_per_cycle;
   for (std::size_t n = 0; n < w.rail->nodes.size(); ++n)
-    r.nodes.push_back({w.rail->nodes[n], at_full.nodes[n], at_idle.nodes[n].mean, surge.highest[number][n]});
+    r.nodes.push_back({w.rail->nodes[n], at_full.nodes[n], at_idle.nodes[n].mean,
+                       std::max(surge.highest[number][n], volts_peak{cold_high.rails[number].nodes[n].highest})});
   r.choke_lowest_idle = at_idle.nodes.front().through_lowest;
   r.worst = at_full.diodes.front();
   for (const supply::diode_state& d : at_full.diodes) r.worst = worse(r.worst, d);
@@ -190,7 +192,7 @@ supply_study study(const amplifier_supply& a, const std::function<double(std::si
   out.of = a;
   const double low = 1 - a.under_ratio, high = 1 + a.over_ratio;
   const std::vector<std::size_t> rails = rectified(a);
-  supply::state idle_nominal;
+  supply::state idle_nominal, cold_high;
   for (const load_state load : {load_state::full, load_state::idle, load_state::cold}) {
     for (const auto& [mains, ratio_of_mains] : {std::pair{"low", low}, {"nominal", 1.0}, {"high", high}}) {
       const bool nominal = ratio_of_mains == 1.0;
@@ -199,6 +201,7 @@ supply_study study(const amplifier_supply& a, const std::function<double(std::si
                                   ? supply::solve(net)
                                   : supply::solve_periodic(net, {192, nominal && load == load_state::full});
       out.states.push_back(state_at(a, load, mains, s));
+      if (load == load_state::cold && ratio_of_mains == high) cold_high = s;
       if (nominal && load == load_state::full) out.full = s;
       if (nominal && load == load_state::idle) idle_nominal = s;
     }
@@ -207,7 +210,7 @@ supply_study study(const amplifier_supply& a, const std::function<double(std::si
   if (rails.empty()) return out;
   const supply::surge_state surge = supply::switch_on(network_at(a, load_state::cold, high), 2_s);
   for (std::size_t k = 0; k < rails.size(); ++k) {
-    out.rails.push_back(figures_of_rail(a, a.windings[rails[k]], out.full, idle_nominal, surge, k));
+    out.rails.push_back(figures_of_rail(a, a.windings[rails[k]], out.full, idle_nominal, cold_high, surge, k));
     note_target(a, rails[k], one_turn_ratio ? one_turn_ratio(rails[k]) : 0, out.rails.back());
   }
   return out;

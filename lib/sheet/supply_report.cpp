@@ -15,7 +15,8 @@ using supply::circuit;
 namespace {
 
 std::string volts_text(double v) { return fixed(v, std::abs(v) < 20 ? 2 : 1); }
-std::string milli(double amps) { return number(amps * 1e3, 3); }
+// In thousandths; what is smaller than a thousandth of those is not worth its digits.
+std::string milli(double x) { return std::abs(x) < 1e-6 ? "0" : number(x * 1e3, 3); }
 
 std::string type_of(const planned_rail& r) {
   const rectifier_type& t = r.wish.rectifier.type;
@@ -27,15 +28,14 @@ std::string type_of(const planned_rail& r) {
 
 std::string nodes_table(const supply_study& s, const planned_rail& r) {
   const double sign = r.wish.negative ? -1 : 1;
-  text_table t({"node", "V full", "V idle", "V at most", "ripple V", "V p-p", "hum dB", "load mA", "cap mA", "choke mA",
-                "W lost"});
+  text_table t({"node", "V full", "V idle", "V at most", "ripple mV", "mV p-p", "hum dB", "load mA", "cap mA",
+                "choke mA", "W lost"});
   for (const planned_node& n : r.nodes) {
     const double mean = plain(n.full.mean.plain()), ripple = plain(n.full.ripple.plain());
     const bool led = !std::holds_alternative<std::monostate>(n.wish.through);
     const bool choke = std::holds_alternative<supply::choke>(n.wish.through);
     t.add({n.wish.name, volts_text(sign * mean), volts_text(sign * plain(n.idle.plain())),
-           volts_text(sign * plain(n.switch_on.plain())), number(ripple, 3),
-           number(plain(n.full.ripple_peak_to_peak), 3),
+           volts_text(sign * plain(n.switch_on.plain())), milli(ripple), milli(plain(n.full.ripple_peak_to_peak)),
            ripple > 0 && mean != 0 ? fixed(20 * std::log10(ripple / std::abs(mean)), 0) : "",
            milli(plain(n.full.load.plain())), n.wish.shunt ? milli(plain(n.full.capacitor_ripple.plain())) : "",
            choke ? milli(plain(n.full.through.plain())) : "", led ? number(plain(n.full.through_loss), 2) : ""});
@@ -90,7 +90,7 @@ std::string windings_table(const supply_study& s) {
         const double dc = plain(p.current_dc.plain());
         t.add({half ? w.name + (port == w.first ? ", first half" : ", second half") : w.name,
                volts_text(plain(p.no_load.plain())), volts_text(plain(p.on_load.plain())),
-               number(plain(p.current.plain()), 4), std::abs(dc) > 1e-9 ? number(dc, 3) : "",
+               number(plain(p.current.plain()), 4), std::abs(dc) > 1e-5 * plain(p.current.plain()) ? number(dc, 3) : "",
                number(plain(apparent_power(p.on_load, p.current)), 3), number(plain(s.full.copper[port]), 3)});
       }
       if (!w.second) break;
@@ -99,10 +99,8 @@ std::string windings_table(const supply_study& s) {
   const supply::state& f = s.full;
   std::string out = "Windings at full load, " + written(s.of.base.mains.plain()) + " at the wall\n" + t.text();
   out += wrapped("volts are true r.m.s.; a peaky current flattens the wave", "  ");
-  return out +
-         labelled("Primary", shown(f.primary_current.plain(), 4) + " r.m.s., " + shown(f.wall, 4) + ", " +
-                                 shown(apparent_power(s.of.base.mains, f.primary_current), 4)) +
-         "\n";
+  return out + labelled("Primary", shown(f.primary_current.plain(), 4) + " r.m.s., " + shown(f.wall, 4) + ", " +
+                                       shown(apparent_power(s.of.base.mains, f.primary_current), 4));
 }
 
 std::string checks_text(const std::vector<check>& checks) {

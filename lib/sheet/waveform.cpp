@@ -3,6 +3,7 @@
 #include <sstream>
 
 #include <turnwright/measure/written.hpp>
+#include <turnwright/sheet/columns.hpp>
 #include <turnwright/sheet/report.hpp>
 
 #include "drawing.hpp"
@@ -25,8 +26,8 @@ constexpr double left = 70, wide = 560, gap = 34, head = 54;
 // One field of the drawing: lines over a mains cycle with their scale, each named at its right end.
 class field {
  public:
-  field(drawing& d, double top, double high, std::string title, std::string unit, std::vector<line> lines)
-      : d_(d), top_(top), high_(high), title_(std::move(title)), unit_(std::move(unit)), lines_(std::move(lines)) {
+  field(drawing& d, double top, double high, std::string title, kind of, std::vector<line> lines)
+      : d_(d), top_(top), high_(high), title_(std::move(title)), of_(of), lines_(std::move(lines)) {
     for (const line& l : lines_) {
       lowest_ = std::min(lowest_, *std::min_element(l.y->begin(), l.y->end()));
       highest_ = std::max(highest_, *std::max_element(l.y->begin(), l.y->end()));
@@ -38,10 +39,14 @@ class field {
     d_.text(left, top_ - 8, title_, anchor::start, true);
     d_.box(left, top_, wide, high_);
     for (const double part : {0.25, 0.5, 0.75}) d_.rule(left + part * wide, top_, left + part * wide, top_ + high_);
+    std::vector<double> marks;
     for (const double v : {lowest_, 0.0, highest_}) {
       const bool crowded = v != 0 && std::abs(height_of(v) - height_of(0)) < 12;
-      if (!crowded) d_.text(left - 6, height_of(v) + 4, number(v, 3) + " " + unit_, anchor::end);
+      if (!crowded) marks.push_back(v);
     }
+    std::sort(marks.begin(), marks.end());
+    marks.erase(std::unique(marks.begin(), marks.end()), marks.end());
+    for (const double v : marks) d_.text(left - 6, height_of(v) + 4, shown_plain(v, of_), anchor::end);
     d_.rule(left, height_of(0), left + wide, height_of(0));
     std::vector<double> taken;
     for (const line& l : lines_) draw_line(l, taken);
@@ -67,7 +72,8 @@ class field {
 
   drawing& d_;
   double top_, high_;
-  std::string title_, unit_;
+  std::string title_;
+  kind of_;
   std::vector<line> lines_;
   double lowest_ = 0, highest_ = 0;
 };
@@ -80,6 +86,14 @@ std::vector<double> signed_as(const std::vector<double>& y, bool negative) {
   return out;
 }
 
+// A title that fits the sheet, cut at a blank where it is longer; the whole of it stands in the file's own title.
+std::string headline(const std::string& title) {
+  constexpr std::size_t most = 84;
+  if (shown_width(title) <= most) return title;
+  const std::size_t blank = title.rfind(' ', most);
+  return title.substr(0, blank == std::string::npos ? most : blank) + " ...";
+}
+
 }  // namespace
 
 std::string waveform_svg(const supply_study& s) {
@@ -90,7 +104,7 @@ std::string waveform_svg(const supply_study& s) {
             "One mains cycle at full load and nominal mains: for each rail the winding's volts with those of its first "
             "node, and the "
             "current of each rectifier; at the foot the line current.");
-  d.text(left, 22, s.of.title, anchor::start, true);
+  d.text(left, 22, headline(s.of.title), anchor::start, true);
   d.text(left, 38,
          "one cycle of " + written(s.of.base.mains.plain()) + " " + written(s.of.base.frequency) +
              " at full load, from the rising zero of the mains",
@@ -103,7 +117,7 @@ std::string waveform_svg(const supply_study& s) {
     const supply::rail_curves& rail = c.rails[k];
     kept.push_back(signed_as(rail.reservoir_v, r.wish.negative));
     const bool half = r.wish.kind == supply::circuit::full_wave_centre_tap;
-    field(d, top, volts_high, "Rail " + r.winding + ", volts", "V",
+    field(d, top, volts_high, "Rail " + r.winding + ", volts", kind::voltage,
           {{half ? "first half" : "winding", &rail.winding_v, stroke::thin},
            {"node " + r.wish.nodes.front().name, &kept.back(), stroke::thick}})
         .draw();
@@ -112,10 +126,10 @@ std::string waveform_svg(const supply_study& s) {
     for (std::size_t n = 0; n < rail.diode_a.size(); ++n)
       lines.push_back({(half ? "anode " : "diode ") + std::to_string(n + 1), &rail.diode_a[n],
                        n == 0 ? stroke::thick : stroke::dashed});
-    field(d, top, amps_high, "Rail " + r.winding + ", rectifier current", "A", lines).draw();
+    field(d, top, amps_high, "Rail " + r.winding + ", rectifier current", kind::current, lines).draw();
     top += amps_high + gap;
   }
-  field(d, top, amps_high, "Line current", "A", {{"line", &c.primary_a, stroke::thick}}).draw();
+  field(d, top, amps_high, "Line current", kind::current, {{"line", &c.primary_a, stroke::thick}}).draw();
   const double foot = top + amps_high + 16, cycle_ms = 1e3 / plain(s.of.base.frequency);
   for (const double part : {0.0, 0.25, 0.5, 0.75, 1.0})
     d.text(left + part * wide, foot, number(part * cycle_ms, 3) + " ms", anchor::middle);
