@@ -261,7 +261,7 @@ void read_target(page& w, rail_wish& out) {
   std::vector<std::string> names;
   for (const node_wish& n : out.nodes) names.push_back(n.name);
   const std::string wanted = node.value_or(names.empty() ? "" : names.front());
-  if (std::find(names.begin(), names.end(), wanted) == names.end())
+  if (!names.empty() && std::find(names.begin(), names.end(), wanted) == names.end())
     target->fault(wording::unknown_word(target->place("node"), wanted, names));
   target->finish();
   if (at) out.target = target_wish{wanted, volts_dc{*at}};
@@ -334,7 +334,7 @@ std::optional<rail_wish> read_rail(reading_desk& desk, page& w, bool halves, vol
   read_target(w, out);
   check_first_node(desk, w, out);
   if (out.kind == circuit::bridge && halves) out.centre_tap_left = true;
-  if (out.kind == circuit::full_wave_centre_tap && !halves && !out.target)
+  if (out.kind == circuit::full_wave_centre_tap && !halves && !w.has("target"))
     desk.faults.push_back(wording::other(
         "circuit", w.place("circuit"), "a full-wave centre-tap circuit on a winding without a centre tap",
         "volts written as halves, such as \"300-0-300 V\"", "or the circuit \"bridge\""));

@@ -81,6 +81,7 @@ secondary_wish read_secondary(reading_desk& desk, page& w) {
   if (rectified) {
     read_rectified(desk, w, out, w.has("voltage") || w.has("no_load_voltage"));
     if (current) out.rated = amperes_rms{*current};
+    if (!out.rail) out.current = amperes_rms{1_A};  // its faults are noted; nothing more is to be said of it
   } else if (!rms_there && !desk.valves.empty()) {
     out.current = amperes_rms{0_A};  // from the list of valves, once every winding is read
   } else {
@@ -150,7 +151,8 @@ void check_references(reading_desk& desk, const std::string& place) {
           "a tap of a centre-tapped or half-wave winding, or a winding of its own",
           "neither end of such a winding stays at earth"));
     }
-    if (host && (host->tap_of || s.voltage >= host->voltage)) {
+    const bool comparable = host && plain(host->voltage) > 0 && plain(s.voltage) > 0;  // else that fault is noted
+    if (host && (host->tap_of || (comparable && s.voltage >= host->voltage))) {
       desk.faults.push_back(wording::other("tap", here,
                                            wording::quoted(s.name) + " as a tap of " + wording::quoted(host->name),
                                            "fewer volts than the half it is a tap of, which is no tap itself"));

@@ -50,11 +50,12 @@ std::vector<load_ratio> ratios_of(const demand& d, const draft& f, const running
     double found = plain(r.electric.ports[k].on_load.plain()) / plain(open);
     if (has_target(w)) {
       // Rail volts rise with the winding's, less a part lost in rectifier and chain: some 8 % of them for a start,
-      // which only sets how fast the rounds close in.
+      // which only sets how fast the rounds close in. Beyond two and a half times the first guess a core is hopeless.
       const double wanted = plain(w.rail->target->at.plain()), lost = 0.08 * wanted;
       const double there = std::max(plain(at_target(d, ports[k].secondary, r)), 0.2 * wanted);
-      const volts needed = open * ((wanted + lost) / (there + lost));
-      found = plain(ports[k].half == 1 ? *w.second_half : w.voltage) / plain(needed);
+      const double needed = plain(open) * ((wanted + lost) / (there + lost));
+      const double guess = plain(ports[k].half == 1 ? *w.second_half : w.voltage);
+      found = guess / std::clamp(needed, 0.4 * guess, 2.5 * guess);
       (ports[k].half == 0 ? all[ports[k].secondary].first : all[ports[k].secondary].second) = found;
       continue;
     }
@@ -114,7 +115,32 @@ struct settled_round {
   running r;
   wire_set wires;
   double score;
+  bool rough;
 };
+
+// Rails that are aimed at are closed in on by an estimate of what a turn does; where that leaves one more than half a
+// turn's worth off, the turn next to it is wound and the nearer of the two kept.
+void move_to_targets(const demand& d, const shop& s, const core_body& core, const selector_position& at,
+                     settled_round& kept) {
+  for (std::size_t i = 0; i < d.secondaries.size(); ++i) {
+    const secondary_wish& w = d.secondaries[i];
+    if (!has_target(w) || w.fixed.n) continue;
+    const auto off = [&](const running& r) { return plain(at_target(d, i, r)) - plain(w.rail->target->at.plain()); };
+    for (int tries = 0; tries < 4; ++tries) {
+      const double now = off(kept.r), a_turn = plain(at_target(d, i, kept.r)) / kept.f.n.secondaries[i].first.count();
+      if (std::abs(now) <= 0.4 * a_turn) break;
+      turn_set n = kept.f.n;
+      const turns step{now > 0 ? -1 : 1};
+      n.secondaries[i].first = n.secondaries[i].first + step;
+      if (w.second_half) n.secondaries[i].second = n.secondaries[i].second + step;
+      draft f = lay_out(d, s, core, n, kept.wires);
+      running r = run(d, f, at, 1.0, kept.r.copper);
+      if (std::abs(off(r)) >= std::abs(now)) break;
+      kept.f = std::move(f);
+      kept.r = std::move(r);
+    }
+  }
+}
 
 // Turns and wires at one density until both stand still. They are whole numbers, so left alone they may wander: after
 // three rounds the primary and the sizing currents are held, and only the secondaries still follow their volts. Those
@@ -152,11 +178,12 @@ attempt settle(const demand& d, const shop& s, const core_body& core, const flux
       amps = currents_of(d, f, r);
     }
     const double score = score_of(d, f, r);
-    seen.push_back({std::move(f), std::move(r), wires, score});
+    seen.push_back({std::move(f), std::move(r), wires, score, !held});
   }
   settled_round& kept =
       *std::min_element(seen.begin(), seen.end(), [](const auto& a, const auto& b) { return a.score < b.score; });
-  if (out.rounds <= free_rounds) kept.r = run(d, kept.f, at, 1.0, kept.r.copper);  // it stood still on rough figures
+  if (kept.rough) kept.r = run(d, kept.f, at, 1.0, kept.r.copper);
+  move_to_targets(d, s, core, at, kept);
   out.volts_score = score_of(d, kept.f, kept.r);
   out.coil = std::move(kept.f);
   out.nominal = std::move(kept.r);

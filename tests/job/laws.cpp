@@ -20,9 +20,9 @@ using nlohmann::json;
 namespace {
 
 #ifdef NDEBUG
-constexpr int named_jobs = 2000, open_jobs = 40;
+constexpr int named_jobs = 2000, open_jobs = 40, rail_jobs = 150, open_rail_jobs = 6;
 #else
-constexpr int named_jobs = 100, open_jobs = 2;  // the sanitizers are slow
+constexpr int named_jobs = 100, open_jobs = 2, rail_jobs = 6, open_rail_jobs = 0;  // the sanitizers are slow
 #endif
 
 const catalogue& tables() {
@@ -125,8 +125,10 @@ void check_power(const json& r) {
   const json& loss = r["losses"];
   REQUIRE(loss["copper_W"].get<double>() + loss["core_W"].get<double>() ==
           Approx(loss["total_W"].get<double>()).epsilon(1e-7));
-  REQUIRE(r["input_W"].get<double>() ==
-          Approx(r["output_W"].get<double>() + loss["total_W"].get<double>()).epsilon(1e-6));
+  // Phasors close exactly; behind rectifiers the periodic state is found within its tolerance.
+  REQUIRE(
+      r["input_W"].get<double>() ==
+      Approx(r["output_W"].get<double>() + loss["total_W"].get<double>()).epsilon(r.contains("rails") ? 1e-3 : 1e-6));
   double copper = 0;
   for (const json& w : r["windings"]) copper += w.value("loss_W", 0.0);
   REQUIRE(copper == Approx(loss["copper_W"].get<double>()).epsilon(1e-6));
@@ -157,8 +159,9 @@ void check_losses(const json& job, const json& r) {
     // hot over cold by (234.5 + T) / 254.5 lies between that of the ambient and that of the highest mains
     const double hot = w["resistance_hot_ohm"].get<double>() / w["resistance_20C_ohm"].get<double>();
     const double ambient = r["thermal"]["ambient_C"];
-    REQUIRE(hot >= (234.5 + ambient) / 254.5 - 1e-9);
-    REQUIRE(hot <= (234.5 + ambient + w["rise_K"].get<double>()) / 254.5 + 1e-9);
+    const double hair = r.contains("rails") ? 1e-3 : 1e-9;
+    REQUIRE(hot >= (234.5 + ambient) / 254.5 - hair);
+    REQUIRE(hot <= (234.5 + ambient + w["rise_K"].get<double>()) / 254.5 + hair);
   }
   if (job["primary"].contains("taps") && job["primary"]["taps"].size() == 1) {
     const double idle = r["core"]["no_load_current_A"];
@@ -181,8 +184,9 @@ void check_ampere_turns(const design& p) {
   const double line = plain(p.made.nominal.electric.primary_current.plain());
   const double no_load = std::hypot(plain(p.made.nominal.magnetising.plain()),
                                     plain(p.made.nominal.core_loss) / plain(p.made.nominal.electric.emf.plain()));
-  REQUIRE(line <= referred + no_load * (1 + 1e-9));
-  if (p.windable) REQUIRE(line >= 0.97 * referred);
+  const bool rails = !p.supply.rails.empty();  // their halves take turns, so that amperes add to less
+  REQUIRE(line <= (referred + no_load) * (1 + (rails ? 1e-3 : 1e-9)));
+  if (p.windable && !rails) REQUIRE(line >= 0.97 * referred);
 }
 
 void check_report(const design& p) {
@@ -199,6 +203,36 @@ void check_report(const design& p) {
   }
 }
 
+// Rails: volts in their order, no less current in a winding than its circuit allows, targets within half a turn.
+void check_rails(const json& job, const design& p) {
+  for (const planned_rail& rail : p.supply.rails) {
+    INFO(rail.winding);
+    for (const planned_node& n : rail.nodes) {
+      REQUIRE(plain(n.full.mean.plain()) <= plain(n.idle.plain()) * 1.001);
+      REQUIRE(plain(n.idle.plain()) <= plain(n.switch_on.plain()) * 1.001);
+      const bool doubled = rail.wish.kind == supply::circuit::full_wave_doubler;
+      const double crest = plain(peak_of_sine(rail.each_anode).plain()) * (1 + p.wanted.mains.over_ratio);
+      REQUIRE(plain(n.switch_on.plain()) <=
+              crest * (doubled ? 2 : 1) * 2);  // a choke without a load may swing to twice
+    }
+    const planned_winding& w =
+        *std::find_if(p.windings.begin(), p.windings.end(), [&](const auto& x) { return x.name == rail.winding; });
+    double dc = 0;
+    for (const planned_node& n : rail.nodes) dc += plain(n.full.load.plain());
+    const double least = rail.wish.kind == supply::circuit::full_wave_centre_tap ? 1 / std::sqrt(2.0)
+                         : rail.wish.kind == supply::circuit::half_wave          ? std::sqrt(2.0)
+                                                                                 : 1.0;
+    REQUIRE(plain(w.current.plain()) >= 0.98 * least * dc);
+    REQUIRE(plain(rail.worst.inverse.plain()) <= plain(rail.inverse_worst.plain()) * 1.001);
+    if (!rail.off_target || !p.windable) continue;
+    REQUIRE(rail.one_turn);
+    REQUIRE(plain(*rail.one_turn) > 0);
+    REQUIRE(std::abs(plain(*rail.off_target)) <= 0.52 * plain(*rail.one_turn));
+  }
+  REQUIRE(p.supply.states.size() == (job.dump().find("\"rail\"") == std::string::npos ? 3u : 9u));
+  for (const supplied_state& s : p.supply.states) REQUIRE(s.settled);
+}
+
 void check_all(const json& job) {
   INFO(job.dump());
   const design p = planned(job);
@@ -211,12 +245,14 @@ void check_all(const json& job) {
   check_power(r);
   check_losses(job, r);
   check_ampere_turns(p);
+  check_rails(job, p);
   check_report(p);
   if (p.windable) {
     REQUIRE(r["window"]["fits"].get<bool>());
     REQUIRE(r["thermal"]["winding_rise_K"].get<double>() <= plain(p.wanted.limits.temperature_rise) * (1 + 1e-9));
-    REQUIRE(p.made.nominal.residual_K < 1e-7);
-    REQUIRE(p.made.high.residual_K < 1e-7);
+    const double settled_K = p.supply.rails.empty() ? 1e-7 : 0.05;
+    REQUIRE(p.made.nominal.residual_K < settled_K);
+    REQUIRE(p.made.high.residual_K < settled_K);
     for (const check& c : p.checks) REQUIRE(c.weight != level::stop);
   } else {
     const bool says_why = std::any_of(p.checks.begin(), p.checks.end(),
@@ -243,10 +279,18 @@ TEST_CASE("every plan whose core is open keeps them too", "[property]") {
   CHECK(windable >= open_jobs * 3 / 4);
 }
 
+TEST_CASE("a plan with rails keeps the laws of its trade and of its rectifiers", "[property]") {
+  testing::job_dice dice(104);
+  for (int i = 0; i < rail_jobs; ++i) check_all(dice.rails_job(true));
+  for (int i = 0; i < open_rail_jobs; ++i) check_all(dice.rails_job(false));
+}
+
 TEST_CASE("the same job gives the same bytes every time", "[property]") {
   testing::job_dice dice(103);
   for (int i = 0; i < 20; ++i) {
     const json job = dice.job(true);
+    const json rails = dice.rails_job(true);
+    if (i < 4) REQUIRE(json_of(planned(rails)) == json_of(planned(rails)));
     REQUIRE(json_of(planned(job)) == json_of(planned(job)));
     REQUIRE(report_of(planned(job), true) == report_of(planned(job), true));
   }

@@ -56,7 +56,8 @@ TEST_CASE("each wrong entry is named with its place and a code", "[refusal]") {
       {"/secondaries/1/name", "HT", "repeated-name", "job.json /secondaries/1/name"},
       {"/secondaries/1/name", "primary", "bad-name", "job.json /secondaries/1/name"},
       {"/secondaries/1/floats_on", "HTT", "unknown-word", "job.json /secondaries/1/floats_on"},
-      {"/secondaries/1/rail", json::array(), "not-yet", "job.json /secondaries/1/rail"},
+      {"/secondaries/1/rail", json::array(), "missing", "job.json /secondaries/1/rail"},
+      {"/secondaries/1/load", "3 ohm", "not-yet", "job.json /secondaries/1/load"},
       {"/secondaries/1/wire", "24", "gauge-system", "job.json /secondaries/1/wire"},
       {"/secondaries/1/wire", "0.51 mm", "unknown-name", "job.json /secondaries/1/wire"},
       {"/secondaries/1/turns", 2.5, "wrong-sort", "job.json /secondaries/1/turns"},
@@ -75,7 +76,9 @@ TEST_CASE("each wrong entry is named with its place and a code", "[refusal]") {
       {"/screens", json::array({{{"after", "nothing"}}}), "unknown-word", "job.json /screens/0/after"},
       {"/limits", "hot", "wrong-sort", "job.json /limits"},
       {"/format", "turnwright-job/2", "unknown-word", "job.json /format"},
-      {"/valves", json::array(), "not-yet", "job.json /valves"},
+      {"/valves", json::array({"2 x EL35"}), "unknown-name", "job.json /valves/0"},
+      {"/stock", json::object(), "not-yet", "job.json /stock"},
+      {"/known", json::object(), "either-or", "job.json /known"},
       {"/secondaries/1/floats_on", "heaters", "unknown-word", "job.json /secondaries/1/floats_on"},
       {"/primary/tolerance", "1 %", "not-yet", "job.json /primary/tolerance"},
       {"/screens", json::array({{{"after", "HT"}}, {{"after", "HT"}}}), "repeated-name", "job.json /screens/1/after"},
@@ -175,8 +178,9 @@ TEST_CASE("names match without regard to case, blanks and hyphens, and by alias"
 }
 
 TEST_CASE("the short form makes a job that is read again", "[refusal]") {
-  const std::string text =
+  const auto [text, left_open] =
       job_of({"230 V 50 Hz", {"HT: 300-0-300 V 120 mA rms", "heaters: 6.3 V 4 A ct", "rectifier heater: 5V 2A"}});
+  CHECK(left_open.empty());
   CHECK(faults_of(text).empty());
   const json job = json::parse(text);
   CHECK(job["secondaries"][0]["current"] == "120 mA");
@@ -184,10 +188,16 @@ TEST_CASE("the short form makes a job that is read again", "[refusal]") {
   CHECK(job["secondaries"][2]["voltage"] == "5V");
 }
 
-TEST_CASE("above 50 V a current without a word is direct current, which is not yet planned", "[refusal]") {
-  const auto faults = faults_of(job_of({"230 V 50 Hz", {"HT: 300-0-300 V 120 mA"}}));
-  REQUIRE_FALSE(faults.empty());
-  CHECK(faults[0].code == "not-yet");
+TEST_CASE("above 50 V a current without a word is direct current, and is said to be", "[refusal]") {
+  const written_job w =
+      job_of({"230 V 50 Hz", {"HT: 300-0-300 V 120 mA GZ34", "bias: 60 V 10 mA dc", "heaters: 6.3 V 4 A"}});
+  CHECK(faults_of(w.text).empty());
+  const json job = json::parse(w.text);
+  CHECK(job["secondaries"][0]["dc_current"] == "120 mA");
+  CHECK(job["secondaries"][0]["circuit"] == "full-wave centre-tap");
+  CHECK(job["secondaries"][1]["circuit"] == "bridge");
+  CHECK(job["secondaries"][2]["current"] == "4 A");
+  CHECK(w.kind_left_open == std::vector<std::string>{"HT"});
 }
 
 TEST_CASE("a short form that cannot be read says which words", "[refusal]") {

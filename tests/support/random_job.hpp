@@ -27,6 +27,29 @@ class job_dice {
     return room;
   }
 
+  /// A job whose HT feeds a rectifier with its rail, and whose bias, where it has one, a half-wave one.
+  nlohmann::json rails_job(bool named_core) {
+    nlohmann::json j = job(named_core);
+    for (nlohmann::json& w : j["secondaries"]) {
+      if (w["name"] == "HT") rectify(w);
+      if (w["name"] == "bias") {
+        w.erase("current");
+        w["circuit"] = "half-wave";
+        w["polarity"] = "negative";
+        w["rail"] = {{{"node", "A"}, {"capacitor", "47 uF"}, {"load", text(real(10, 100), "kohm")}}};
+      }
+    }
+    // A tap wants an end that stays at earth.
+    for (auto at = j["secondaries"].begin(); at != j["secondaries"].end(); ++at) {
+      if ((*at)["name"] == "bias" && j["secondaries"][0].value("circuit", "") != "full-wave centre-tap" &&
+          j["secondaries"][0].value("circuit", "") != "half-wave") {
+        j["secondaries"].erase(at);
+        break;
+      }
+    }
+    return j;
+  }
+
   /// A job; `named_core` gives it a lamination, which keeps the search short.
   nlohmann::json job(bool named_core) {
     const double va = std::pow(10.0, real(0.7, 2.8));
@@ -55,6 +78,33 @@ class job_dice {
   }
 
  private:
+  void rectify(nlohmann::json& w) {
+    const std::string v = w["voltage"];
+    const bool centre = v.find("-0-") != std::string::npos;
+    const double volts = std::stod(v), dc = std::stod(w["current"].get<std::string>()) * (centre ? 0.8 : 0.45);
+    w.erase("current");
+    w["circuit"] = centre ? "full-wave centre-tap" : one_of<std::string>({"bridge", "half-wave", "full-wave doubler"});
+    w["rectifier"] = one_of<std::string>({"silicon", "GZ34", "EZ81", "5Y3-GT", "1N4007"});
+    if (w["circuit"] != "full-wave centre-tap") w["rectifier"] = "silicon";
+    const double rail = volts * (w["circuit"] == "full-wave doubler" ? 2.5 : 1.2);
+    nlohmann::json a{{"node", "A"},
+                     {"capacitor", text(real(10, 60), "uF")},
+                     {"load", {{"full", text(0.9 * dc, "mA")}, {"idle", text(0.5 * dc, "mA")}}}};
+    nlohmann::json b{{"node", "B"}, {"capacitor", "32 uF"}, {"load", {text(0.1 * dc, "mA"), "470 kohm"}}};
+    if (chance(0.5))
+      b["through"] = {{"choke", text(real(3, 15), "H")}, {"resistance", text(0.02 * rail / dc * 1e3, "ohm")}};
+    else
+      b["through"] = {{"resistor", text(0.5 * rail / dc * 1e3, "ohm")}};
+    w["rail"] = {a, b};
+    if (chance(0.5)) {
+      w.erase("voltage");
+      w["target"] = {{"node", "A"}, {"voltage", text(rail, "V")}};
+    } else if (chance(0.3)) {
+      w["no_load_voltage"] = w["voltage"];
+      w.erase("voltage");
+    }
+  }
+
   nlohmann::json primary() {
     const int sort = one_of<int>({0, 1, 2, 3, 4});
     if (sort == 0) return {{"taps", {"230 V"}}};
