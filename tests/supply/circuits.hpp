@@ -93,6 +93,12 @@ inline double mean_volts(const supply::state& s, std::size_t node = 0, std::size
 inline double ripple_volts(const supply::state& s, std::size_t node = 0, std::size_t rail = 0) {
   return plain(s.rails[rail].nodes[node].ripple.plain());
 }
+/// All that hangs on a rail.
+inline double total_amps(const supply::rail_state& r) {
+  double sum = 0;
+  for (const supply::node_state& n : r.nodes) sum += plain(n.load.plain());
+  return sum;
+}
 inline double port_amps(const supply::state& s, std::size_t port = 0) { return plain(s.ports[port].current.plain()); }
 inline double peak_amps(const supply::state& s, std::size_t anode = 0, std::size_t rail = 0) {
   return plain(s.rails[rail].diodes[anode].peak.plain());

@@ -36,6 +36,43 @@ double valve_volts(const row& r, double winding_and_choke) {
   return mean_volts(s);
 }
 
+circuit circuit_named(const std::string& name) {
+  if (name == "centre tap") return circuit::full_wave_centre_tap;
+  if (name == "bridge") return circuit::bridge;
+  REQUIRE(name == "half-wave");
+  return circuit::half_wave;
+}
+
+// Ideal diodes behind a winding of no resistance.
+supply::network ideal_supply(const std::string& name, double winding, double hz, const supply::rail_node& node) {
+  supply::network net = mains_of(100, hz);
+  const circuit sort = circuit_named(name);
+  if (sort == circuit::full_wave_centre_tap) {
+    add_centre_tap(net, winding, 0, 0, ideal_diode(), {node});
+  } else {
+    add_single(net, sort, winding, 0, ideal_diode(), {node});
+  }
+  return net;
+}
+
+// A ratio of an ideal rectifier with a winding, or halves, of 200 V.
+double ideal_ratio(const std::string& what, const supply::state& s) {
+  const double winding = 200, peak = winding * std::numbers::sqrt2, mean = mean_volts(s);
+  const double amps = plain(s.rails[0].nodes[0].load.plain()), power = mean * amps;
+  double windings = 0;
+  for (const supply::port_state& p : s.ports) windings += winding * plain(p.current.plain());
+  if (what == "direct over peak") return mean / peak;
+  if (what == "ripple over direct") return ripple_volts(s) / mean;
+  if (what == "inverse over peak") return plain(s.rails[0].diodes[0].inverse.plain()) / peak;
+  if (what == "direct over taken power") return power / plain(s.wall);
+  if (what == "direct power over winding") return power / windings;
+  if (what == "direct over r.m.s.") return mean / winding;
+  if (what == "winding current over direct") return port_amps(s) / amps;
+  if (what == "winding over direct power") return windings / power;
+  REQUIRE(what == "primary over direct power");
+  return plain(s.apparent) / power;
+}
+
 }  // namespace
 
 TEST_CASE("capacitor input agrees with the curves in the coordinates of 1943", "[published][schade_capacitor_input]") {
@@ -65,5 +102,30 @@ TEST_CASE("valve rectifiers give the volts of their data sheets", "[published][v
       CHECK(valve_volts(r, 0) > expected);
       CHECK(valve_volts(r, 150) < expected);
     }
+  }
+}
+
+TEST_CASE("ideal rectifiers have the ratios of the handbooks", "[published][ideal_rectifiers]") {
+  for (const row& r : published("ideal_rectifiers")) {
+    INFO(r.place());
+    const bool choke = r.text("behind") == "choke";
+    const supply::rail_node node =
+        choke ? node_of(choke_of(100, 0), 50e-6, 0, 0, 1000) : node_of(direct(), 0, 0, 0, 1000);
+    const supply::state s = supply::solve_periodic(ideal_supply(r.text("circuit"), 200, 50, node), fine);
+    CHECK(s.settled);
+    CHECK(ideal_ratio(r.text("what"), s) == within_percent(r.needed("expected"), r.needed("tolerance_percent")));
+  }
+}
+
+TEST_CASE("supplies of textbooks give about the figures printed with them", "[published][textbook_supplies]") {
+  for (const row& r : published("textbook_supplies")) {
+    INFO(r.place());
+    const supply::rail_node node = node_of(direct(), r.needed("capacitor_uf") * 1e-6, 0, 0, r.needed("load_ohm"));
+    const supply::state s = supply::solve_periodic(
+        ideal_supply(r.text("circuit"), r.needed("winding_v"), r.needed("frequency_hz"), node), fine);
+    CHECK(s.settled);
+    const double found =
+        r.text("what") == "direct volts" ? mean_volts(s) : plain(s.rails[0].nodes[0].ripple_peak_to_peak);
+    CHECK(found == within_percent(r.needed("expected"), r.needed("tolerance_percent")));
   }
 }
