@@ -9,6 +9,11 @@ namespace {
 
 constexpr double second_base = (1 - stage_share) / stage_share;
 
+// A few doubles: a loop is quicker than a call.
+inline void copy_few(const double* from, std::size_t n, double* to) {
+  for (std::size_t i = 0; i < n; ++i) to[i] = from[i];
+}
+
 // out = m b, `Rows` high, column by column; 0: the height is known at run time alone.
 template <int Rows>
 inline void times(const double* m, int columns, int rows, const double* b, double* out) {
@@ -64,9 +69,9 @@ stepper::stepper(const elements& e, int steps, double phase)
 template <int Rows>
 bool stepper::one_stage(int sort, const double* base, double mains, double* out, double* kept_z, double* kept_v) {
   const int rows = Rows > 0 ? Rows : s_.rows;
-  double* x = work_.data();
-  for (int r = 0; r < rows; ++r)
-    x[r] = s_.by_one[static_cast<std::size_t>(r)] + s_.by_mains[static_cast<std::size_t>(r)] * mains;
+  double* const x = work_.data();
+  const double *const one = s_.by_one.data(), *const slope = s_.by_mains.data();
+  for (int r = 0; r < rows; ++r) x[r] = one[r] + slope[r] * mains;
   times<Rows>(s_.m.data(), s_.states, rows, base, x);
   const bool any = junctions_.solve(x + s_.states, sort);
   if (any) {
@@ -74,13 +79,13 @@ bool stepper::one_stage(int sort, const double* base, double mains, double* out,
       times<Rows>(s_.c.data() + static_cast<std::ptrdiff_t>(j) * rows, 1, rows,
                   &junctions_.amps()[static_cast<std::size_t>(j)], x);
   }
-  std::copy(x, x + s_.states, out);
+  copy_few(x, static_cast<std::size_t>(s_.states), out);
   if (kept_z) {
-    std::copy(base, base + s_.states, kept_z);
+    copy_few(base, static_cast<std::size_t>(s_.states), kept_z);
     kept_z[s_.states] = mains;
     kept_z[s_.states + 1] = 1;
-    std::copy(junctions_.amps().begin(), junctions_.amps().end(), kept_z + s_.states + 2);
-    std::copy(junctions_.volts().begin(), junctions_.volts().end(), kept_v);
+    copy_few(junctions_.amps().data(), junctions_.amps().size(), kept_z + s_.states + 2);
+    copy_few(junctions_.volts().data(), junctions_.volts().size(), kept_v);
   }
   return any;
 }
@@ -105,7 +110,7 @@ void stepper::sensitivity_stage(const Eigen::MatrixXd& base, Eigen::MatrixXd& ou
       for (std::size_t a = 0; a < n; ++a)
         times<Rows>(s_.c.data() + static_cast<std::ptrdiff_t>(on[a]) * rows, 1, rows, &amps[a], x);
     }
-    std::copy(x, x + s_.states, out.col(column).data());
+    copy_few(x, static_cast<std::size_t>(s_.states), out.col(column).data());
   }
 }
 
@@ -128,6 +133,7 @@ void stepper::run(double* x, Eigen::MatrixXd* monodromy, record* kept) {
   const auto states = static_cast<std::size_t>(s_.states);
   const auto junctions = static_cast<std::size_t>(s_.junctions);
   int off = 0;
+  junctions_.forget_failures();
   if (monodromy) {
     monodromy->setIdentity(s_.states, s_.states);
     s1_.resize(s_.states, s_.states);

@@ -22,12 +22,23 @@ class moments {
         origin_(all_.col(0)),
         first_(VectorXd::Zero(r.width)),
         second_(MatrixXd::Zero(r.width, r.width)) {
-    VectorXd weight(2 * steps);
-    for (Eigen::Index k = 0; k < 2 * steps; ++k) weight(k) = (k % 2 == 0 ? 1 - stage_share : stage_share) / steps;
-    MatrixXd from_origin = all_.colwise() - origin_;
-    first_ = from_origin * weight;
-    from_origin *= weight.cwiseSqrt().asDiagonal();
-    second_.selfadjointView<Eigen::Lower>().rankUpdate(from_origin);
+    const Eigen::Index n = r.width;
+    VectorXd d(n);
+    // The two stages of a step have one weight each, so that the sums of both sorts are taken apart and weighed once.
+    for (Eigen::Index sort = 0; sort < 2; ++sort) {
+      const double weight = (sort == 0 ? 1 - stage_share : stage_share) / steps;
+      VectorXd sum = VectorXd::Zero(n);
+      MatrixXd squares = MatrixXd::Zero(n, n);
+      for (Eigen::Index k = sort; k < 2 * steps; k += 2) {
+        d = all_.col(k) - origin_;
+        sum += d;
+        for (Eigen::Index a = 0; a < n; ++a) {
+          if (d(a) != 0) squares.col(a).tail(n - a) += d(a) * d.tail(n - a);
+        }
+      }
+      first_ += weight * sum;
+      second_ += weight * squares;
+    }
     second_.triangularView<Eigen::StrictlyUpper>() = second_.transpose();
   }
   double mean(const row_of& y) const { return y.dot(first_) + y.dot(origin_); }
@@ -199,8 +210,10 @@ class reader {
     const junction& j = e_.diodes[static_cast<std::size_t>(number)].j;
     const record& r = shot_.last;
     const int stages = 2 * grid_.steps(), all = static_cast<int>(e_.diodes.size());
-    const auto amps = [&](int k) { return r.at(k)[first_current() + number]; };
-    const auto volts_at = [&](int k) { return r.v[static_cast<std::size_t>(k * all + number)]; };
+    const double* const first_amps = r.z.data() + first_current() + number;
+    const double* const first_volts = r.v.data() + number;
+    const auto amps = [&](int k) { return first_amps[k * r.width]; };
+    const auto volts_at = [&](int k) { return first_volts[k * all]; };
     std::vector<double> ends, inverse;
     for (int k = 1; k < stages; k += 2) {
       ends.push_back(amps(k));

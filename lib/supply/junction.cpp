@@ -73,6 +73,7 @@ junction_solver::junction_solver(const elements& e, const stage& s) : e_(e), s_(
   for (auto* all : {&v_, &i_, &g_, &r_, &dv_, &from_}) all->assign(n, 0);
   for (std::size_t j = 0; j < n; ++j) v_[j] = e.diodes[j].j.threshold - 1;
   for (past& p : past_) p.last = p.before = v_;
+  for (const si_diode& d : e.diodes) threshold_.push_back(d.j.threshold);
   on_.reserve(n);
 }
 
@@ -102,23 +103,30 @@ bool junction_solver::solve(const double* p, int sort) {
   std::size_t pushed = n;
   int above = 0;
   for (std::size_t j = 0; j < n; ++j) {
-    if (p[j] <= e_.diodes[j].j.threshold) continue;
+    if (p[j] <= threshold_[j]) continue;
     pushed = j;
     ++above;
   }
-  on_.clear();
   if (above == 0) {
     for (std::size_t j = 0; j < n; ++j) {
-      v_[j] = p[j];
-      i_[j] = g_[j] = 0;
+      then.before[j] = then.last[j];
+      then.last[j] = v_[j] = p[j];
     }
-  } else {
-    guess(p, then);
-    if (above > 1 || !one_alone(p, pushed)) all_together(p);
+    if (!on_.empty()) {
+      std::fill(i_.begin(), i_.end(), 0.0);
+      std::fill(g_.begin(), g_.end(), 0.0);
+      on_.clear();
+    }
+    return false;
   }
-  then.before.swap(then.last);
-  then.last = v_;
-  return above > 0;
+  on_.clear();
+  guess(p, then);
+  if (above > 1 || !one_alone(p, pushed)) all_together(p);
+  for (std::size_t j = 0; j < n; ++j) {
+    then.before[j] = then.last[j];
+    then.last[j] = v_[j];
+  }
+  return true;
 }
 
 // One junction pushed on, the others left off: a scalar Newton on a convex law. False where another turns out to

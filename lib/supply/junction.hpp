@@ -23,6 +23,7 @@ class junction_solver {
   /// Currents per change of p over the junctions that are on, in their order: (1 - G F)^-1 G [S].
   void slopes(std::vector<double>& w) const;
   int failures() const { return failures_; }
+  void forget_failures() { failures_ = 0; }
 
  private:
   struct past {
@@ -41,6 +42,7 @@ class junction_solver {
 
   const elements& e_;
   const stage& s_;
+  std::vector<double> threshold_;  // of each junction
   std::vector<double> v_, i_, g_, r_, dv_, from_;
   past past_[2];
   std::vector<int> on_;
