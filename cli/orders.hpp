@@ -34,7 +34,7 @@ struct plan_order {
 struct supply_order {
   std::optional<std::string> job;       ///< a file, or "-" for standard input
   std::optional<std::string> mains;     ///< other volts at the wall
-  std::vector<std::string> rectifiers;  ///< "HT=GZ34", or "silicon" for the first rail
+  std::vector<std::string> rectifiers;  ///< "HT=GZ34", or "silicon" where there is one rail
   std::vector<std::string> reservoirs;  ///< "HT=47 uF"
   std::vector<std::string> loads;       ///< "HT/A=120 mA"
   std::optional<std::string> waveform;  ///< file for the drawing

@@ -107,7 +107,7 @@ json winding_json(const planned_winding& w) {
   j["voltage_on_load_V"] = figure(w.on_load);
   if (!w.primary) j["voltage_resistive_V"] = figure(w.on_load_resistive);
   j["current_A"] = figure(w.current);
-  if (plain(w.current_dc.plain()) != 0) j["current_dc_A"] = figure(w.current_dc);
+  if (carries_dc(w.current_dc, w.current)) j["current_dc_A"] = figure(std::abs(plain(w.current_dc.plain())));
   j["current_density_A_per_mm2"] = in_a_per_mm2(w.density);
   if (!w.tap_of) j["loss_W"] = figure(w.loss);
   j["apparent_power_VA"] = figure(w.apparent);

@@ -83,7 +83,9 @@ known_winding read_winding(reading_desk& desk, page& w) {
         wording::missing(w.place("resistance"), "the winding's resistance, such as \"48 ohm\", or one for each half"));
   out.leakage = one_or_two<henries>(w, "leakage_inductance", "0 H", "100 H", out.second.has_value());
   const bool rectified = asks_for_rail(w);
-  if (rectified) out.rail = read_rail(desk, w, out.second.has_value(), out.first, std::nullopt);
+  if (rectified)
+    out.rail = read_rail(desk, w, out.second.has_value() || w.flag("centre_tap").value_or(false), w.has("tap_of"),
+                         out.first, std::nullopt);
   const volts whole = out.second ? out.first + *out.second : out.first;
   const volts spoken = at ? (at->second ? at->first + *at->second : at->first) : whole;
   out.load = read_ac_load(w, spoken);
@@ -116,6 +118,7 @@ class builder {
     std::stable_sort(out.windings.begin(), out.windings.end(),
                      [&](const auto& a, const auto& b) { return place(a.name) < place(b.name); });
     const std::size_t ports = out.base.ports.size();
+    check_taps(out);
     out.base.leakage.assign(ports * ports, 0_H);
     for (std::size_t k = 0; k < ports; ++k) {
       for (std::size_t m = 0; m < ports; ++m) out.base.leakage[k * ports + m] = together(out.base.ports, k, m);
@@ -132,11 +135,13 @@ class builder {
     for (const supplied_winding& h : out.windings) {
       if (h.name != *w.tap_of || h.tap_of) continue;
       const bool fits = w.first < out.base.ports[h.first].ratio * primary_ && !w.resistance.empty() &&
-                        w.resistance.front() < out.base.ports[h.first].resistance;
+                        w.resistance.front() < out.base.ports[h.first].resistance &&
+                        (w.leakage.empty() || w.leakage.front() <= own_[h.first]);
       if (!fits)
-        desk_.faults.push_back(wording::other("tap", "/secondaries/" + std::to_string(place(w.name)),
-                                              wording::quoted(w.name) + " as a tap of " + wording::quoted(h.name),
-                                              "fewer volts and less resistance than the half it is a tap of"));
+        desk_.faults.push_back(
+            wording::other("tap", "/secondaries/" + std::to_string(place(w.name)),
+                           wording::quoted(w.name) + " as a tap of " + wording::quoted(h.name),
+                           "fewer volts, less resistance and no more leakage than the half it is a tap of"));
       const bool fixed_end = !h.rail || h.rail->kind == supply::circuit::full_wave_centre_tap ||
                              h.rail->kind == supply::circuit::half_wave;
       if (!fixed_end && w.rail)
@@ -150,6 +155,21 @@ class builder {
                                           wording::quoted(*w.tap_of),
                                           "another winding of the job that is no tap itself"));
     return std::nullopt;
+  }
+
+  // Of two taps of one half the one with more volts holds the other: it has no less resistance and leakage.
+  void check_taps(const amplifier_supply& out) const {
+    for (const supplied_winding& a : out.windings) {
+      for (const supplied_winding& b : out.windings) {
+        if (!a.tap_of || a.tap_of != b.tap_of || &a == &b) continue;
+        const supply::port &pa = out.base.ports[a.first], &pb = out.base.ports[b.first];
+        if (pa.ratio >= pb.ratio && (pa.resistance < pb.resistance || own_[a.first] < own_[b.first]))
+          desk_.faults.push_back(wording::other(
+              "tap", "/secondaries/" + std::to_string(place(a.name)),
+              wording::quoted(a.name) + " with less resistance or leakage than " + wording::quoted(b.name),
+              "no less of either: the one with more volts contains the other"));
+      }
+    }
   }
 
   void add(amplifier_supply& out, const known_winding& w, std::optional<std::size_t> inside) {
@@ -268,16 +288,18 @@ known_supply read_known(std::string_view text, const std::string& origin, const 
   builder(desk, windings, primary).build(out.supply);
   if (!faults.empty()) throw refused(std::move(faults));
   out.supply.title = scratch.title;
-  out.supply.over_ratio = scratch.mains.over_ratio;
-  out.supply.under_ratio = scratch.mains.under_ratio;
+  // The band lies about the volts that the primary is for; what is at the wall now may stand anywhere in it, or beyond.
+  const volts wall = mains.wall.value_or(primary);
+  const double nominal_over_wall = plain(primary) / plain(wall);
+  out.supply.over_ratio = std::max(0.0, (1 + scratch.mains.over_ratio) * nominal_over_wall - 1);
+  out.supply.under_ratio = std::max(0.0, 1 - (1 - scratch.mains.under_ratio) * nominal_over_wall);
   supply::network& net = out.supply.base;
-  net.mains = volts_rms{mains.wall.value_or(primary)};
+  net.mains = volts_rms{wall};
   net.frequency = scratch.mains.frequency;
   net.source_resistance = mains.source.value_or(0_ohm);
   if (!mains.wall) desk.assume("/mains/voltage", written(primary), "the volts of the known primary");
   if (!mains.source) desk.assume("/mains/source_resistance", "0 ohm", "the known figures are taken as they are");
-  desk.assume("waveform", "a sine",
-              "a wall with a flat top costs a capacitor-input rail 3 to 5 % of its volts at the same r.m.s. (memory)");
+  assume_sine(desk);
   out.assumed = scratch.assumed;
   return out;
 }

@@ -92,6 +92,9 @@ void read_loads(page& n, node_wish& out) {
   if (!full) both.fault(wording::missing(both.place("full"), "the load at full drive, such as \"95 mA\""));
   if (full) out.full = out.idle = read_load(both, *full, both.place("full"));
   if (idle) out.idle = read_load(both, *idle, both.place("idle"));
+  if (out.idle.constant > out.full.constant)
+    both.fault(wording::other("wrong-sort", both.place("idle"), "more current at idle than at full load",
+                              "full as the heavier load: rectifier and heat are judged by it"));
   both.finish();
 }
 
@@ -116,8 +119,9 @@ node_wish read_node(page& n, std::size_t number) {
   node_wish out;
   out.name = n.text("node").value_or("");
   if (!n.has("node")) n.fault(wording::missing(n.place("node"), "a letter for the node, such as \"A\""));
-  if (out.name.size() > 20 || std::any_of(out.name.begin(), out.name.end(),
-                                          [](char c) { return static_cast<unsigned char>(c) < 32 || c == 127; }))
+  if ((n.has("node") && out.name.empty()) || out.name.size() > 20 ||
+      std::any_of(out.name.begin(), out.name.end(),
+                  [](char c) { return static_cast<unsigned char>(c) < 32 || c == 127; }))
     n.fault(wording::other("bad-name", n.place("node"), wording::quoted(out.name), "a name of 1 to 20 characters"));
   read_through(n, out);
   if (const json* c = n.value("capacitor")) out.shunt = read_capacitor(n, *c, n.place("capacitor"), &out.rated);
@@ -164,7 +168,7 @@ std::optional<rectifier_wish> written_law(page& r) {
     ++ways;
   }
   if (exponential) {
-    const auto saturation = r.quantity<amperes>("saturation_current", "1 fA", "1 mA");
+    const auto saturation = r.quantity<amperes>("saturation_current", "0.000001 nA", "1 mA");
     const auto slope = r.quantity<ohms>("resistance", "0 ohm", "100 kohm");
     const json* ideality = r.value("ideality");
     const bool number =
@@ -251,6 +255,17 @@ void read_nodes(reading_desk& desk, page& w, rail_wish& out) {
         wording::other("out-of-range", w.place("rail"), std::to_string(out.nodes.size()) + " nodes", "24 at most"));
 }
 
+// A constant current can only be drawn where a capacitor holds the rail while the rectifier is off.
+void refuse_bare_rail(reading_desk& desk, page& w, const rail_wish& r) {
+  const bool held = std::any_of(r.nodes.begin(), r.nodes.end(), [](const node_wish& n) { return n.shunt.has_value(); });
+  const bool drawn = std::any_of(r.nodes.begin(), r.nodes.end(),
+                                 [](const node_wish& n) { return plain(n.full.constant.plain()) > 0; });
+  if (!held && drawn && !std::holds_alternative<std::monostate>(r.nodes.front().through))
+    desk.faults.push_back(wording::other("wrong-sort", w.place("rail"),
+                                         "a constant current from a rail without a capacitor",
+                                         "a resistance, or a capacitor at a node"));
+}
+
 void read_target(page& w, rail_wish& out) {
   auto target = w.object("target");
   if (!target) return;
@@ -296,15 +311,17 @@ bool asks_for_rail(page& w) {
   return asks;
 }
 
-std::optional<rail_wish> read_rail(reading_desk& desk, page& w, bool halves, volts winding,
+std::optional<rail_wish> read_rail(reading_desk& desk, page& w, bool halves, bool tap, volts winding,
                                    std::optional<amperes> guessed) {
   rail_wish out;
   const std::size_t faults_before = desk.faults.size();
   const auto kind_read = read_circuit(w);
   if (!w.has("circuit")) {
-    out.kind = halves ? circuit::full_wave_centre_tap : circuit::bridge;
+    out.kind = halves ? circuit::full_wave_centre_tap : tap ? circuit::half_wave : circuit::bridge;
     desk.assume(w.pointer() + "/circuit", std::string(word_of(out.kind)),
-                halves ? "a centre-tapped winding" : "a winding without a centre tap");
+                halves ? "a centre-tapped winding"
+                : tap  ? "a tap, one end of which is earthed"
+                       : "a winding without a centre tap");
   }
   out.kind = kind_read.value_or(out.kind);
   out.negative = w.word("polarity", {"positive", "negative"}) == "negative";
@@ -331,14 +348,23 @@ std::optional<rail_wish> read_rail(reading_desk& desk, page& w, bool halves, vol
     desk.faults.push_back(
         wording::missing(w.place("rail"), "a rail, or the direct current of the load as \"dc_current\""));
   }
+  refuse_bare_rail(desk, w, out);
   read_target(w, out);
   check_first_node(desk, w, out);
-  if (out.kind == circuit::bridge && halves) out.centre_tap_left = true;
+  if (out.kind != circuit::full_wave_centre_tap && halves) out.centre_tap_left = true;
+  if (tap && out.kind != circuit::half_wave && out.kind != circuit::half_wave_doubler)
+    desk.faults.push_back(wording::other("tap", w.place("circuit"), "a " + std::string(word_of(out.kind)) + " on a tap",
+                                         "half-wave, or half-wave doubler", "one end of a tap stays at earth"));
   if (out.kind == circuit::full_wave_centre_tap && !halves && !w.has("target"))
     desk.faults.push_back(wording::other(
         "circuit", w.place("circuit"), "a full-wave centre-tap circuit on a winding without a centre tap",
         "volts written as halves, such as \"300-0-300 V\"", "or the circuit \"bridge\""));
   return desk.faults.size() == faults_before ? std::optional(out) : std::nullopt;
+}
+
+void assume_sine(reading_desk& desk) {
+  desk.assume("waveform", "a sine",
+              "a wall with a flat top costs a capacitor-input rail 3 to 5 % of its volts at the same r.m.s. (memory)");
 }
 
 volts guessed_winding(const rail_wish& r) {

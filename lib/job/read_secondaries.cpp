@@ -34,7 +34,7 @@ void read_volts(reading_desk& desk, page& w, secondary_wish& out) {
 void read_rectified(reading_desk& desk, page& w, secondary_wish& out, bool has_volts) {
   const bool halves = out.second_half.has_value() || w.flag("centre_tap").value_or(false);
   const auto guess = desk.draws ? std::optional(desk.draws->full.plain()) : std::nullopt;
-  auto rail = read_rail(desk, w, halves, out.voltage, guess);
+  auto rail = read_rail(desk, w, halves, w.has("tap_of"), out.voltage, guess);
   if (!rail) return;
   if (rail->target && has_volts)
     desk.faults.push_back(
@@ -96,6 +96,7 @@ secondary_wish read_secondary(reading_desk& desk, page& w) {
   out.floats_on = w.text("floats_on");
   out.tap_of = w.text("tap_of");
   out.fixed = read_wishes(desk, w);
+  if (out.rail && out.rail->target) out.rail->target->tolerance_ratio = tolerance_of(out).over;
   if (out.tap_of && (out.second_half || out.centre_tap)) {
     desk.faults.push_back(
         wording::other("tap", w.where(), "a tap of another winding with a centre tap of its own", "a plain tap"));
@@ -160,20 +161,27 @@ void check_references(reading_desk& desk, const std::string& place) {
   }
 }
 
-// Heater windings without a current get what the listed valves take; a winding that has one is checked against it.
+volts whole_volts(const secondary_wish& w) { return w.second_half ? w.voltage + *w.second_half : w.voltage; }
+
+// Amperes that the windings for so many heater volts give, one of them left out.
+amperes given_at(const demand& d, volts heater, const secondary_wish* left_out) {
+  amperes sum = 0_A;
+  for (const secondary_wish& o : d.secondaries) {
+    const volts there = whole_volts(o);
+    if (&o != left_out && !o.rail && there < heater * 1.02 && there > heater * 0.98) sum += o.current.plain();
+  }
+  return sum;
+}
+
+// A heater winding without a current gets what the listed valves take and no other winding gives.
 void share_heaters(reading_desk& desk, const std::string& place) {
   for (std::size_t i = 0; i < desk.out.secondaries.size(); ++i) {
     secondary_wish& s = desk.out.secondaries[i];
     if (plain(s.current.plain()) > 0) continue;
     const std::string here = place + "/" + std::to_string(i) + "/current";
-    const volts whole = s.second_half ? s.voltage + *s.second_half : s.voltage;
-    const heater_load load = heater_current(desk.valves, whole);
-    amperes others = 0_A;
-    for (const secondary_wish& o : desk.out.secondaries) {
-      const volts there = o.second_half ? o.voltage + *o.second_half : o.voltage;
-      if (&o != &s && !o.rail && there < whole * 1.02 && there > whole * 0.98) others += o.current.plain();
-    }
-    if (plain(load.current) <= plain(others)) {
+    const heater_load load = heater_current(desk.valves, whole_volts(s));
+    const amperes others = given_at(desk.out, whole_volts(s), &s);
+    if (load.current <= others) {
       desk.faults.push_back(
           wording::missing(here, "the r.m.s. current in the winding, such as \"3.1 A\"",
                            "none of the listed valves has a heater for these volts that no other winding feeds"));
@@ -183,6 +191,37 @@ void share_heaters(reading_desk& desk, const std::string& place) {
     s.current = amperes_rms{load.current - others};
     desk.assume("/secondaries/" + std::to_string(i) + "/current", shown(s.current.plain(), 4),
                 "heaters of the listed valves, " + std::string(word_of(load.known_how)));
+  }
+}
+
+// The heater of a rectifier valve with 5 V (or any but the common 6.3 V) is tied to its cathode or is the cathode: its
+// winding rides on the HT, whether the job says so or not.
+void float_rectifier_heaters(reading_desk& desk, const std::string& place) {
+  for (const secondary_wish& ht : desk.out.secondaries) {
+    if (!ht.rail || ht.tap_of || ht.rail->rectifier.type.sort != rectifier_sort::valve) continue;
+    const auto& heater = ht.rail->rectifier.type.heater_volts;
+    if (!heater) continue;
+    for (std::size_t i = 0; i < desk.out.secondaries.size(); ++i) {
+      secondary_wish& w = desk.out.secondaries[i];
+      const bool common = *heater > 6_V && *heater < 6.6_V && w.name.find("rectifier") == std::string::npos;
+      const bool fits = whole_volts(w) > *heater * 0.95 && whole_volts(w) < *heater * 1.05;
+      if (w.rail || w.tap_of || w.floats_on || common || !fits) continue;
+      w.floats_on = ht.name;
+      desk.assume(place + "/" + std::to_string(i) + "/floats_on", ht.name,
+                  "the heater of a " + ht.rail->rectifier.type.name + " stands at the HT");
+    }
+  }
+}
+
+// What the listed valves take at each heater voltage there is, beside what the windings give.
+void note_heaters(reading_desk& desk) {
+  for (const secondary_wish& s : desk.out.secondaries) {
+    if (!is_heater(s)) continue;
+    const volts at = whole_volts(s);
+    const auto seen = [&](const heater_need& n) { return n.at < at * 1.02 && n.at > at * 0.98; };
+    if (std::any_of(desk.out.heaters.begin(), desk.out.heaters.end(), seen)) continue;
+    const amperes taken = heater_current(desk.valves, at).current;
+    if (taken > 0_A) desk.out.heaters.push_back({at, taken, given_at(desk.out, at, nullptr)});
   }
 }
 
@@ -241,6 +280,10 @@ void read_secondaries(reading_desk& desk, page& root) {
   }
   check_references(desk, root.place("secondaries"));
   share_heaters(desk, root.place("secondaries"));
+  note_heaters(desk);
+  float_rectifier_heaters(desk, "/secondaries");
+  if (std::any_of(desk.out.secondaries.begin(), desk.out.secondaries.end(), [](const auto& s) { return s.rail; }))
+    assume_sine(desk);
   for (std::size_t i = 0; i < desk.out.secondaries.size(); ++i) {
     const secondary_wish& s = desk.out.secondaries[i];
     if (s.fixed.tolerance_ratio) continue;

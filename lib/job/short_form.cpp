@@ -88,7 +88,7 @@ std::optional<json> winding_of(const std::string& text, written_job& out, std::v
   if (e.centre_tap) w["centre_tap"] = true;
   if (dc) {
     w["dc_current"] = current;
-    w["circuit"] = v->second ? "full-wave centre-tap" : "bridge";
+    w["circuit"] = v->second || e.centre_tap ? "full-wave centre-tap" : "bridge";
     if (!e.rectifier.empty()) w["rectifier"] = e.rectifier;
   } else {
     w["current"] = current;

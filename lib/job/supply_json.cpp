@@ -10,16 +10,11 @@ using namespace job_detail;
 
 namespace {
 
-// Direct current above the noise of the solver.
-bool carries_dc(const supply::port_state& p) {
-  return std::abs(plain(p.current_dc.plain())) > 1e-5 * plain(p.current.plain());
-}
-
 json half_json(const supply::port_state& p, const supply::port& of) {
   json j{{"voltage_no_load_V", figure(p.no_load)},
          {"voltage_on_load_V", figure(p.on_load)},
          {"current_A", figure(p.current)}};
-  if (carries_dc(p)) j["current_dc_A"] = figure(p.current_dc);
+  if (carries_dc(p.current_dc, p.current)) j["current_dc_A"] = figure(std::abs(plain(p.current_dc.plain())));
   j["resistance_hot_ohm"] = figure(of.resistance);
   return j;
 }
@@ -39,7 +34,9 @@ json winding_json(const supply_study& s, const supplied_winding& w) {
   j["voltage_no_load_V"] = figure(open);
   j["voltage_on_load_V"] = figure(loaded);
   j["current_A"] = figure(larger.current);
-  if (carries_dc(larger)) j["current_dc_A"] = figure(larger.current_dc);
+  if (carries_dc(larger.current_dc, larger.current))
+    j["current_dc_A"] = figure(std::abs(plain(larger.current_dc.plain())));
+  if (!w.second) j["resistance_hot_ohm"] = figure(s.of.base.ports[w.first].resistance);
   j["loss_W"] = figure(loss);
   j["apparent_power_VA"] = figure(apparent);
   j["regulation_ratio"] = figure(plain(open) / plain(loaded.plain()) - 1);
@@ -51,8 +48,8 @@ json primary_json(const supply_study& s) {
   const supply::state& full = s.full;
   const double wall_va = plain(s.of.base.mains.plain()) * plain(full.primary_current.plain());
   json j{{"current_A", figure(full.primary_current)}};
-  if (std::abs(plain(full.primary_dc.plain())) > 1e-5 * plain(full.primary_current.plain()))
-    j["current_dc_A"] = figure(full.primary_dc);
+  // With a magnetising inductance nothing drives any direct current.
+  if (!s.of.base.magnetising_inductance && !s.rails.empty()) j["current_dc_A"] = figure(full.primary_dc);
   j["apparent_power_VA"] = figure(wall_va);
   j["power_W"] = figure(full.wall);
   return j;

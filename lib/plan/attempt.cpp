@@ -91,8 +91,10 @@ double score_of(const demand& d, const draft& f, const running& r) {
   for (std::size_t k = 0; k < ports.size(); ++k) {
     const secondary_wish& w = d.secondaries[ports[k].secondary];
     if (has_target(w)) {
-      const double found = plain(at_target(d, ports[k].secondary, r)) / plain(w.rail->target->at.plain());
-      worst = std::max(worst, volts_off(w, found));
+      // Half a turn's worth is as near as whole turns come, whatever the tolerance.
+      const double wanted = plain(w.rail->target->at.plain()), found = plain(at_target(d, ports[k].secondary, r));
+      const double half_a_turn = 0.6 * wanted / f.n.secondaries[ports[k].secondary].first.count();
+      worst = std::max(worst, std::abs(found - wanted) / std::max(half_a_turn, tolerance_of(w).over * wanted));
       continue;
     }
     const supply::port_state& s = r.electric.ports[k];
@@ -357,7 +359,8 @@ attempt wind(const demand& d, const shop& s, const core_body& core, bool stepped
   attempt best = try_density(start);
   const bool tight = !holds(best, "window-fit") || best.coil.fill > comfortable_fill;
   const bool thinner = tight || !holds(best, "rectifier-limits");
-  const bool thicker = !holds(best, "heat") || !holds(best, "regulation") || best.volts_score > 1;
+  const bool thicker =
+      !holds(best, "heat") || !holds(best, "regulation") || (best.volts_score > 1 && best.volts_score < 4);
   if (!thinner && !thicker) return best;
   const double step = thinner ? 1.06 : 1 / 1.06,
                end = thinner ? plain(d.limits.current_density.value_or(usual_highest_density)) : 1.0e6;

@@ -58,14 +58,37 @@ void add_volts(const design& p, const std::string& cure, std::vector<check>& all
   }
 }
 
+// The heaters of the listed valves against the windings for them.
+void add_heater_needs(const design& p, std::vector<check>& all) {
+  for (const heater_need& n : p.wanted.heaters) {
+    const bool holds = n.given >= n.taken * 0.99;
+    all.push_back(
+        {"open-questions", holds ? level::pass : level::stop,
+         "heaters of the listed valves at " + written(n.at) + " against the current of the windings for them",
+         shown(n.given), "at least " + shown(n.taken),
+         holds ? ""
+               : "a heater current of " + shown(n.taken) + ", or the list of valves as this transformer feeds them"});
+  }
+}
+
 // Amperes that the job calls neither direct nor r.m.s.
+// Heat and wire rest on the states at nominal and at high mains.
+void add_unsettled(const design& p, std::vector<check>& all) {
+  for (const running* r : {&p.made.nominal, &p.made.high}) {
+    if (r->electric.settled) continue;
+    all.push_back({"load-beyond-supply", level::caution, "wire and heat were reckoned from a state that did not settle",
+                   "residual " + shortest(rounded_to(r->electric.residual_ratio, 2)), "0.00005",
+                   "look at the loads and values of the rails"});
+  }
+}
+
 void add_current_kinds(const design& p, std::vector<check>& all) {
   for (const secondary_wish& w : p.wanted.secondaries) {
     if (!w.kind_left_open) continue;
     all.push_back({"current-kind", level::caution,
-                   "the current of " + w.name + " is called neither dc nor rms; " +
-                       (w.rail ? "over 50 V the trade means the direct current of the load, and so it was taken"
-                               : "up to 50 V the r.m.s. current in the winding is meant, and so it was taken"),
+                   "the current of " + w.name +
+                       " is called neither dc nor rms; behind a rectifier or over 50 V the trade means the direct "
+                       "current of the load, and so it was taken",
                    "no word", "dc or rms behind the current", "write dc or rms"});
   }
 }
@@ -206,10 +229,12 @@ std::vector<check> checks_of(const design& p, const std::string& cure) {
   add_limits(p, cure, all);
   add_volts(p, cure, all);
   for (check& c : rail_checks(p.supply)) {
-    if (c.weight == level::stop && c.code == "ht-volts" && c.cure.empty()) c.cure = cure;
+    if (c.weight == level::stop && c.code == "ht-volts") c.cure = cure;
     all.push_back(std::move(c));
   }
   add_current_kinds(p, all);
+  add_unsettled(p, all);
+  add_heater_needs(p, all);
   add_other_positions(p, all);
   add_heaters_over_mains(p, all);
   add_taps(p, all);

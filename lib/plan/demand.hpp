@@ -98,11 +98,18 @@ struct prices_wish {
   per_kilogram copper, steel;
 };
 
+/// What the listed valves take at a heater voltage, and what the windings for it are to give.
+struct heater_need {
+  volts at;
+  amperes taken, given;
+};
+
 struct demand {
   std::string title;
   mains_wish mains;
   primary_wish primary;
   std::vector<secondary_wish> secondaries;
+  std::vector<heater_need> heaters;  ///< where the job lists valves
   std::vector<screen_wish> screens;
   std::vector<std::string> order;  ///< names from the core outwards, every winding in it
   core_wish core;

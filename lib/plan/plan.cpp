@@ -219,7 +219,13 @@ std::optional<std::string> cure_by_core(const demand& d, const shop& s, const co
 }
 
 // The smallest change that clears everything, tried in the order wire, turns that are fixed, stack, flux, next core.
-std::string cure_for(const demand& d, const shop& s, const core_body& core) {
+std::string cure_for(const demand& d, const shop& s, const core_body& core, const attempt& made) {
+  const bool rail_out_of_reach =
+      made.volts_score > 4 && std::any_of(d.secondaries.begin(), d.secondaries.end(),
+                                          [](const secondary_wish& w) { return w.rail && w.rail->target; });
+  if (rail_out_of_reach)
+    return "no winding reaches the target: less resistance before the node, another rectifier, less load, or another "
+           "target";
   const std::vector<std::function<std::optional<std::string>()>> ways{
       [&] { return cure_by_wire(d, s, core); }, [&] { return cure_by_turns(d, s, core); },
       [&] { return cure_by_stack(d, s, core); }, [&] { return cure_by_flux(d, s, core); },
@@ -278,11 +284,11 @@ design plan(const demand& d, const shop& s) {
   std::vector<working> workings;
   attempt made = best_of(d, s, candidate_cores(d, s), workings);
   const core_body core = made.coil.core;
-  const bool stands = made.windable();
+  const std::string cure = made.windable() ? "" : cure_for(d, s, core, made);
   design out = figures_of(d, s, std::move(made));
   out.workings = std::move(workings);
   add_choices(d, out);
-  out.checks = checks_of(out, stands ? "" : cure_for(d, s, core));
+  out.checks = checks_of(out, cure);
   // Only what really stands in the way counts as gone past.
   std::erase_if(out.wanted.accepted, [&](const std::string& code) {
     return std::none_of(out.checks.begin(), out.checks.end(),

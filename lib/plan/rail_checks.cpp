@@ -32,9 +32,19 @@ void against_rating(std::vector<check>& all, const planned_rail& r, const std::s
                  "at most " + shown_plain(bound, k), holds ? "" : cure});
 }
 
+// To two digits, never below, or never above: a figure that something has to reach, or may not pass.
+double up_to_two_digits(double x) {
+  const double step = std::pow(10.0, std::floor(std::log10(x)) - 1);
+  return std::ceil(x / step - 1e-9) * step;
+}
+double down_to_two_digits(double x) {
+  const double step = std::pow(10.0, std::floor(std::log10(x)) - 1);
+  return std::floor(x / step + 1e-9) * step;
+}
+
 // A resistor in each anode: what it has to be and what it gets warm with.
 std::string series_cure(const planned_rail& r, ohms missing) {
-  const double ohm = rounded_to(std::ceil(plain(missing)), 2);
+  const double ohm = rounded_to(up_to_two_digits(std::max(plain(missing), 1.0)), 2);
   const double watt = ohm * std::pow(plain(r.worst.rms.plain()), 2);
   return "a resistor of at least " + shortest(ohm) + " ohm in series with each anode; it dissipates " +
          shortest(rounded_to(watt, 2)) + " W, so a part for twice that";
@@ -49,8 +59,9 @@ void add_rectifier_limits(const planned_rail& r, std::vector<check>& all) {
                    kind::current, level::caution, "more series resistance, or a smaller reservoir");
   }
   if (t.direct_current) {
-    const bool whole = valve || t.sort == rectifier_sort::bridge;
-    const double load = plain(r.worst.average.plain()) * (whole && r.wish.kind != circuit::half_wave ? 2 : 1);
+    const bool one_anode = valve && t.anodes && *t.anodes == 1;
+    const bool whole = (valve && !one_anode) || t.sort == rectifier_sort::bridge;
+    const double load = plain(whole ? whole_current(r).plain() : r.worst.average.plain());
     against_rating(
         all, r, whole ? "direct current" : "average current", load, plain((*t.direct_current).plain()), kind::current,
         level::stop,
@@ -61,6 +72,19 @@ void add_rectifier_limits(const planned_rail& r, std::vector<check>& all) {
                    plain((*t.peak_inverse).plain()), kind::voltage, level::stop,
                    valve ? "fewer volts, or a rectifier that stands them"
                          : "two or more such diodes in series, or a type that stands them");
+  }
+  if (t.transient_peak) {
+    against_rating(all, r, "charging current, switched on at the crest of the highest mains", plain(r.surge.plain()),
+                   plain((*t.transient_peak).plain()), kind::current, level::caution,
+                   "more series resistance, a smaller reservoir, or a rectifier that warms up with the valves");
+  }
+  const known_figure<volts_rms>& most_volts = choke_input(r) ? t.choke_input : t.capacitor_input;
+  if (most_volts) {
+    against_rating(
+        all, r,
+        choke_input(r) ? "volts of each anode's supply, choke input" : "volts of each anode's supply, capacitor input",
+        plain(r.each_anode.plain()), plain((*most_volts).plain()), kind::voltage, level::caution,
+        "fewer volts, or a rectifier for more");
   }
   const auto& reservoir = r.wish.nodes.front().shunt;
   if (!valve || choke_input(r) || !reservoir) return;
@@ -81,7 +105,7 @@ void add_rectifier_limits(const planned_rail& r, std::vector<check>& all) {
 // Surge over rated volts of wet aluminium electrolytics: 1.15 up to 315 V, 1.10 above (memory; IEC 60384-4).
 double surge_over_rated(volts rated) { return plain(rated) <= 315 ? 1.15 : 1.10; }
 
-void add_capacitors(const planned_rail& r, std::vector<check>& all) {
+void add_capacitors(hertz mains, const planned_rail& r, std::vector<check>& all) {
   std::string unrated;
   for (const planned_node& n : r.nodes) {
     if (!n.wish.shunt) continue;
@@ -99,8 +123,7 @@ void add_capacitors(const planned_rail& r, std::vector<check>& all) {
                    shown(*n.wish.rated) + " rated, " + percent(surge - 1, 0) + " more as a surge (recalled)",
                    weight == level::pass
                        ? ""
-                       : "a part rated for " + shown(stands, 3) +
-                             " or more, two in series with sharing resistors, or an indirectly heated rectifier"});
+                       : "a part rated for " + shown(stands, 3) + " or more, or two in series with sharing resistors"});
   }
   if (!unrated.empty())
     all.push_back({"capacitor-rating", level::note,
@@ -111,13 +134,13 @@ void add_capacitors(const planned_rail& r, std::vector<check>& all) {
   if (first.wish.shunt) {
     all.push_back({"capacitor-ripple", level::note,
                    "ripple current of the capacitor at node " + first.wish.name + " of " + rail_name(r),
-                   said(first.full.capacitor_ripple) + " r.m.s.", "its maker's figure at twice the mains frequency",
-                   ""});
+                   said(first.full.capacitor_ripple) + " r.m.s.",
+                   "its maker's figure at " + shown(as<hertz>(plain(mains) * r.ripple_per_cycle)), ""});
   }
 }
 
 void add_choke_input(const amplifier_supply& a, const planned_rail& r, std::vector<check>& all) {
-  if (!choke_input(r)) return;
+  if (!choke_input(r) || r.ripple_per_cycle < 2) return;  // half a wave never keeps a choke going
   const auto& l = std::get<supply::choke>(r.wish.nodes.front().through);
   const bool runs_dry = plain(r.choke_lowest_idle) <= 0;
   const volts idle = r.nodes.front().idle.plain();
@@ -133,12 +156,13 @@ void add_choke_input(const amplifier_supply& a, const planned_rail& r, std::vect
           ""};
   if (runs_dry) {
     const volts peak = peak_of_sine(r.each_anode).plain() * (1 + a.over_ratio);
-    const bool stands = std::all_of(r.nodes.begin(), r.nodes.end(),
-                                    [&](const planned_node& n) { return n.wish.rated && *n.wish.rated >= peak; });
+    const bool stands = std::all_of(r.nodes.begin(), r.nodes.end(), [&](const planned_node& n) {
+      return !n.wish.shunt || (n.wish.rated && *n.wish.rated >= peak);
+    });
     c.weight = stands ? level::caution : level::stop;
     const amperes missing = std::max(critical * 1.05 - now, 1_mA);
-    c.cure = "a bleeder of " + shown(idle / missing, 2) + " that dissipates " + shown(idle * missing, 2) +
-             " (a part for twice that), a larger choke, or capacitors for " + shown(peak);
+    c.cure = "a bleeder of " + shown(as<ohms>(down_to_two_digits(plain(idle / missing)))) + " that dissipates " +
+             shown(idle * missing, 2) + " (a part for twice that), a larger choke, or capacitors for " + shown(peak);
   }
   all.push_back(std::move(c));
 }
@@ -155,7 +179,7 @@ void add_dc_in_iron(const supply_study& s, std::vector<check>& all) {
   const amperes dc = as<amperes>(std::abs(plain(net)));
   const std::string what = "direct current in the windings that nothing balances, referred to the primary";
   if (!s.of.base.magnetising_inductance) {
-    if (plain(dc) > 1e-6)
+    if (carries_dc(amperes_dc{dc}, s.full.primary_current))
       all.push_back({"dc-in-iron", level::note,
                      what + "; without a magnetising inductance the transformer counts as ideal down to dc", shown(dc),
                      "a magnetising inductance to compare it with", ""});
@@ -182,41 +206,53 @@ void add_circuit(const planned_rail& r, std::vector<check>& all) {
                  "use the full-wave centre-tap circuit; or leave the tap out, or insulate it for half the HT"});
 }
 
+// Volts of a node at a state of load and mains, as if positive [V].
+double volts_at(const supply_study& s, load_state load, const char* mains, std::size_t rail, std::size_t node) {
+  for (const supplied_state& state : s.states) {
+    if (state.load == load && state.mains == mains) return plain(state.rails[rail][node].plain());
+  }
+  return 0;
+}
+
 void add_loads(const supply_study& s, std::vector<check>& all) {
   for (std::size_t k = 0; k < s.rails.size(); ++k) {
-    const planned_rail& r = s.rails[k];
-    for (const planned_node& n : r.nodes) {
-      if (plain(n.wish.full.constant.plain()) <= 0) continue;
-      const bool sinks = n.full.mean.plain() < 0.2 * r.each_anode.plain();
-      if (sinks)
-        all.push_back({"load-beyond-supply", level::stop,
-                       "node " + n.wish.name + " of " + rail_name(r) + " cannot give what is drawn", said(n.full.mean),
-                       "at least " + shown(0.2 * r.each_anode.plain()),
-                       "less load, or less resistance before the node"});
+    for (std::size_t n = 0; n < s.rails[k].nodes.size(); ++n) {
+      const planned_node& node = s.rails[k].nodes[n];
+      if (plain(node.wish.full.constant.plain()) <= 0) continue;
+      const double open = volts_at(s, load_state::cold, "nominal", k, n),
+                   low = volts_at(s, load_state::full, "low", k, n);
+      const double now = plain(node.full.mean.plain());
+      // A fifth of what it has without load: the bound of judgement for a supply that cannot give what is drawn.
+      if (now >= 0.2 * open && low > 0.02 * open) continue;
+      all.push_back(
+          {"load-beyond-supply", low <= 0.02 * open ? level::stop : level::caution,
+           "node " + node.wish.name + " of " + rail_name(s.rails[k]) + " falls to next to nothing under its load",
+           said(node.full.mean) + ", " + shown(as<volts>(low)) + " at low mains",
+           "a fifth of " + shown(as<volts>(open)), "less load, or less resistance before the node"});
     }
   }
-  const auto unsettled =
-      std::find_if(s.states.begin(), s.states.end(), [](const supplied_state& x) { return !x.settled; });
-  if (unsettled != s.states.end())
+  for (const supplied_state& state : s.states) {
+    if (state.settled) continue;
     all.push_back({"load-beyond-supply", level::caution,
-                   "no periodic state was found at " + std::string(word_of(unsettled->load)) + " load and " +
-                       unsettled->mains + " mains; its figures are not to be trusted",
-                   "residual " + shortest(rounded_to(s.full.residual_ratio, 2)), "0.0001",
+                   "no periodic state was found at " + std::string(word_of(state.load)) + " load and " + state.mains +
+                       " mains; its figures are not to be trusted",
+                   "residual " + shortest(rounded_to(state.residual_ratio, 2)), "0.00005",
                    "look at the loads and values of the rails"});
+  }
 }
 
 void add_targets(const planned_rail& r, std::vector<check>& all) {
-  if (!r.off_target) return;
+  if (!r.off_target || !r.one_turn) return;  // a known transformer's turns are what they are
   const double wanted = plain(r.wish.target->at.plain()), off = plain(*r.off_target);
   const double turn = r.one_turn ? plain(*r.one_turn) : 0;
   const bool near = turn > 0 ? std::abs(off) <= 0.5 * turn : std::abs(off) <= 0.01 * wanted;
-  const bool good = near || std::abs(off) <= 0.02 * wanted;
+  const bool good = near || std::abs(off) <= r.wish.target->tolerance_ratio * wanted;
   all.push_back({"ht-volts",
                  near   ? level::pass
                  : good ? level::note
                         : level::stop,
                  "volts of node " + r.wish.target->node + " of " + rail_name(r) + " at full load, nominal mains" +
-                     (turn > 0 ? "; one turn more (of each half) would add " + shown(*r.one_turn, 2) : ""),
+                     (turn > 0 ? "; " + one_turn_words(r) + " would add " + shown(*r.one_turn, 2) : ""),
                  shown(r.wish.target->at.plain() + *r.off_target, 4) + " (" + signed_percent(off / wanted) + ")",
                  shown(r.wish.target->at.plain(), 4) + ", within half a turn's worth",
                  near ? "" : "let the winding's turns be chosen"});
@@ -243,7 +279,7 @@ std::vector<check> rail_checks(const supply_study& s) {
     add_circuit(r, all);
     add_targets(r, all);
     add_rectifier_limits(r, all);
-    add_capacitors(r, all);
+    add_capacitors(s.of.base.frequency, r, all);
     add_choke_input(s.of, r, all);
   }
   add_ratings(s, all);

@@ -42,6 +42,7 @@ struct rectifier_wish {
 struct target_wish {
   std::string node;
   volts_dc at;
+  double tolerance_ratio = 0.02;  ///< where half a turn's worth is less
 };
 
 struct rail_wish {

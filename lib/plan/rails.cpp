@@ -71,7 +71,9 @@ planned_rail figures_of_rail(const amplifier_supply& a, const supplied_winding& 
   r.ripple_per_cycle = at_full.ripple_per_cycle;
   for (std::size_t n = 0; n < w.rail->nodes.size(); ++n)
     r.nodes.push_back({w.rail->nodes[n], at_full.nodes[n], at_idle.nodes[n].mean,
-                       std::max(surge.highest[number][n], volts_peak{cold_high.rails[number].nodes[n].highest})});
+                       cold_high.settled
+                           ? std::max(surge.highest[number][n], volts_peak{cold_high.rails[number].nodes[n].highest})
+                           : surge.highest[number][n]});
   r.choke_lowest_idle = at_idle.nodes.front().through_lowest;
   r.worst = at_full.diodes.front();
   for (const supply::diode_state& d : at_full.diodes) r.worst = worse(r.worst, d);
@@ -109,7 +111,7 @@ void note_target(const amplifier_supply& a, std::size_t winding, double one_turn
 }
 
 supplied_state state_at(const amplifier_supply& a, load_state load, const char* mains, const supply::state& s) {
-  supplied_state out{load, mains, {}, {}, s.settled};
+  supplied_state out{load, mains, {}, {}, s.settled, s.residual_ratio};
   for (const supplied_winding& w : a.windings) {
     if (!w.rail) out.windings.emplace_back(w.name, volts_of(w, s));
   }
@@ -173,6 +175,16 @@ amperes_rms first_guess_rms(circuit c, amperes_dc load) {
   return amperes_rms{load.plain()};
 }
 
+amperes_dc whole_current(const planned_rail& r) {
+  amperes sum = 0_A;
+  for (const planned_node& n : r.nodes) sum += n.full.load.plain();
+  return amperes_dc{sum};
+}
+
+std::string one_turn_words(const planned_rail& r) {
+  return r.wish.kind == circuit::full_wave_centre_tap ? "one turn more of each half" : "one turn more";
+}
+
 supply::network network_at(const amplifier_supply& a, load_state load, double mains_ratio) {
   supply::network net = a.base;
   net.mains = volts_rms{net.mains.plain() * mains_ratio};
@@ -180,6 +192,10 @@ supply::network network_at(const amplifier_supply& a, load_state load, double ma
     if (w.rail) net.rails.push_back(circuit_of(w, load));
   }
   return net;
+}
+
+bool carries_dc(amperes_dc mean, amperes_rms whole) {
+  return std::abs(plain(mean.plain())) > 2e-3 * plain(whole.plain());
 }
 
 volts_rms volts_of(const supplied_winding& w, const supply::state& s) {

@@ -56,6 +56,11 @@ struct planned_rail {
   std::optional<volts> off_target, one_turn;
 };
 
+/// Direct current that the rectifier gives, all its diodes together.
+amperes_dc whole_current(const planned_rail& r);
+/// How a turn more is spoken of: "one turn more", or "one turn more of each half".
+std::string one_turn_words(const planned_rail& r);
+
 /// Volts of everything at one state of load and mains.
 struct supplied_state {
   load_state load;
@@ -63,6 +68,7 @@ struct supplied_state {
   std::vector<std::pair<std::string, volts_rms>> windings;
   std::vector<std::vector<volts_dc>> rails;  ///< of each rail's nodes, as if positive
   bool settled = true;
+  double residual_ratio = 0;
 };
 
 struct supply_study {
@@ -72,8 +78,8 @@ struct supply_study {
   std::vector<supplied_state> states;
 };
 
-/// Solves every state of a supply. `full`, where given, is its state at full load and nominal mains; `one_turn_ratio`
-/// gives for each winding the part that one turn (of each half) is of it, where it is made of turns.
+/// Solves every state of a supply. `one_turn_ratio` gives for each winding the part that one turn (of each half) is of
+/// it, where it is made of turns.
 supply_study study(const amplifier_supply& a, const std::function<double(std::size_t)>& one_turn_ratio = {});
 
 /// Checks of rails and rectifiers, each with its cure. Source of the rules: data sheets by the tables, trade practice.
@@ -84,6 +90,9 @@ std::vector<check> in_order(std::vector<check> all);
 
 /// Cautions for work on a supply. Source: trade practice; own words.
 std::vector<std::string> supply_cautions();
+
+/// Whether a current has a direct part that stands above the solver's own noise: over 0.2 % of its r.m.s. value.
+bool carries_dc(amperes_dc mean, amperes_rms whole);
 
 /// True r.m.s. volts of a winding, both halves together.
 volts_rms volts_of(const supplied_winding& w, const supply::state& s);

@@ -51,19 +51,18 @@ std::string nodes_table(const supply_study& s, const planned_rail& r) {
 
 std::string rectifier_table(const planned_rail& r) {
   const rectifier_type& rating = r.wish.rectifier.type;
-  const bool whole =
-      rating.sort != rectifier_sort::diode && r.worst.average.plain() > amperes() && r.wish.kind != circuit::half_wave;
+  const bool diode = rating.sort == rectifier_sort::diode;  // rated each for itself; a valve or a bridge as a whole
   text_table t({"rectifier", "found", "rating"});
   const auto row = [&](const std::string& what, const std::string& found, const std::string& bound) {
     t.add({what, found, bound});
   };
-  const std::string each = r.wish.kind == circuit::bridge ? "each diode" : "each anode";
+  const bool anodes = rating.sort == rectifier_sort::valve && r.wish.kind != circuit::bridge;
+  const std::string each = r.wish.kind == circuit::half_wave ? "the diode" : anodes ? "each anode" : "each diode";
   row("peak current, " + each, shown(r.worst.peak.plain()),
       rating.peak_current ? shown((*rating.peak_current).plain()) : "");
-  row("average current, " + each, shown(r.worst.average.plain()), "");
-  if (rating.direct_current)
-    row(whole ? "direct current, all" : "direct current", shown(r.worst.average.plain() * (whole ? 2.0 : 1.0)),
-        shown((*rating.direct_current).plain()));
+  const std::string rated_dc = rating.direct_current ? shown((*rating.direct_current).plain()) : "";
+  row("average current, " + each, shown(r.worst.average.plain()), diode ? rated_dc : "");
+  if (!diode && rating.direct_current) row("direct current, all", shown(whole_current(r).plain()), rated_dc);
   row("r.m.s. current, " + each, shown(r.worst.rms.plain()), "");
   row("peak inverse at this load", shown(r.worst.inverse.plain()), "");
   row("peak inverse, highest mains, no load", shown(r.inverse_worst.plain()),
@@ -71,9 +70,11 @@ std::string rectifier_table(const planned_rail& r) {
   row("charging current, switched on at the crest", shown(r.surge.plain()),
       rating.transient_peak ? shown((*rating.transient_peak).plain()) : "");
   const auto& reservoir = r.wish.nodes.front().shunt;
-  const auto least = reservoir ? least_anode_resistance(rating, r.each_anode, reservoir->value) : std::nullopt;
-  row("resistance of each anode's supply", shown(r.anode_resistance), least ? "at least " + shown(*least) : "");
-  if (reservoir && rating.reservoir_most)
+  const bool direct = std::holds_alternative<std::monostate>(r.wish.nodes.front().through);
+  const auto least =
+      reservoir && direct ? least_anode_resistance(rating, r.each_anode, reservoir->value) : std::nullopt;
+  row("resistance that feeds " + each, shown(r.anode_resistance), least ? "at least " + shown(*least) : "");
+  if (reservoir && direct && rating.reservoir_most)
     row("reservoir", shown(reservoir->value), "at most " + shown(*rating.reservoir_most));
   row("mean drop while conducting", shown(r.worst.mean_drop), "");
   row("conduction in a cycle", fixed(r.worst.conduction_deg, 0) + " deg", "");
@@ -90,7 +91,7 @@ std::string windings_table(const supply_study& s) {
         const double dc = plain(p.current_dc.plain());
         t.add({half ? w.name + (port == w.first ? ", first half" : ", second half") : w.name,
                volts_text(plain(p.no_load.plain())), volts_text(plain(p.on_load.plain())),
-               number(plain(p.current.plain()), 4), std::abs(dc) > 1e-5 * plain(p.current.plain()) ? number(dc, 3) : "",
+               number(plain(p.current.plain()), 4), carries_dc(p.current_dc, p.current) ? number(dc, 3) : "",
                number(plain(apparent_power(p.on_load, p.current)), 3), number(plain(s.full.copper[port]), 3)});
       }
       if (!w.second) break;
@@ -121,7 +122,7 @@ std::string rails_text(const supply_study& s) {
     if (r.off_target) {
       out += wrapped("node " + r.wish.target->node + " was to have " + shown(r.wish.target->at.plain(), 4) +
                          ": it is off by " + shown(*r.off_target, 2) +
-                         (r.one_turn ? "; one turn more (of each half) adds " + shown(*r.one_turn, 2) : ""),
+                         (r.one_turn ? "; " + one_turn_words(r) + " adds " + shown(*r.one_turn, 2) : ""),
                      "  ");
     }
     out += "\n" + rectifier_table(r) + "\n";

@@ -86,12 +86,21 @@ std::vector<double> signed_as(const std::vector<double>& y, bool negative) {
   return out;
 }
 
+// Components are never numbered: a diode is called by what it rectifies.
+std::string diode_name(const planned_rail& r, std::size_t n) {
+  if (r.wish.kind == supply::circuit::half_wave) return "rectifier";
+  if (r.wish.kind == supply::circuit::full_wave_centre_tap) return n == 0 ? "first half" : "second half";
+  return n == 0 ? "rising half cycle" : "falling half cycle";
+}
+
 // A title that fits the sheet, cut at a blank where it is longer; the whole of it stands in the file's own title.
 std::string headline(const std::string& title) {
   constexpr std::size_t most = 84;
   if (shown_width(title) <= most) return title;
-  const std::size_t blank = title.rfind(' ', most);
-  return title.substr(0, blank == std::string::npos ? most : blank) + " ...";
+  std::size_t cut = title.rfind(' ', most);
+  if (cut == std::string::npos) cut = most;
+  while (cut > 0 && (static_cast<unsigned char>(title[cut]) & 0xC0U) == 0x80U) --cut;  // never inside a character
+  return title.substr(0, cut) + " ...";
 }
 
 }  // namespace
@@ -124,8 +133,7 @@ std::string waveform_svg(const supply_study& s) {
     top += volts_high + gap;
     std::vector<line> lines;
     for (std::size_t n = 0; n < rail.diode_a.size(); ++n)
-      lines.push_back({(half ? "anode " : "diode ") + std::to_string(n + 1), &rail.diode_a[n],
-                       n == 0 ? stroke::thick : stroke::dashed});
+      lines.push_back({diode_name(r, n), &rail.diode_a[n], n == 0 ? stroke::thick : stroke::dashed});
     field(d, top, amps_high, "Rail " + r.winding + ", rectifier current", kind::current, lines).draw();
     top += amps_high + gap;
   }

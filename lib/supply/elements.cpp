@@ -90,6 +90,8 @@ class numbering {
         e_.r[k * all + m] = both * shared_resistance(place(k), static_cast<int>(k), place(m), static_cast<int>(m));
         e_.l[k * all + m] = both * plain(net_.leakage[k * all + m]) * net_.ports[k].ratio * net_.ports[m].ratio;
       }
+      // A tap's own lead: a ten-thousandth of its resistance, so that taps at one turn do not make one branch twice.
+      if (p.inside) e_.r[k * all + k] *= 1 + 1e-4;
       e_.r[k * all + k] = std::max(e_.r[k * all + k], least_r);
     }
     amps_.assign(all, 0);

@@ -25,7 +25,7 @@ struct surge_state {
   std::vector<std::vector<volts_peak>> highest;  ///< of each node of each rail, as if positive
   std::vector<amperes_peak> diode_peak;          ///< of each rail, switched on at the crest of the mains
 };
-/// Highest volts and charging current after switching on: the transient itself for `seconds_long`, and the settled cold
+/// Highest volts and charging current after switching on: the transient itself for `how_long`, and the settled cold
 /// state, whichever is more. Throws like `solve_periodic`.
 surge_state switch_on(const network& net, seconds how_long, const grid& g = {96, false});
 

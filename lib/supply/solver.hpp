@@ -27,7 +27,6 @@ class network_solver {
   watts copper(std::size_t port) const { return sine_ ? sine_->copper(port) : last_.copper[port]; }
   /// All figures of the last solution.
   state all() const { return sine_ ? sine_->all() : last_; }
-  const network& circuit() const { return net_; }
 
  private:
   network net_;

@@ -1,5 +1,7 @@
 #include "stage.hpp"
 
+#include <stdexcept>
+
 namespace turnwright::supply::kernel {
 namespace {
 
@@ -129,7 +131,9 @@ stage stage_of(const elements& e, double h) {
   s.h = h;
   s.port_y = port_admittance(e, h);
   const equations eq = fill(e, h, col, s.port_y);
-  s.nodes = eq.g.llt().solve(eq.rhs);
+  const Eigen::LLT<MatrixXd> solved(eq.g);
+  if (solved.info() != Eigen::Success) throw std::logic_error("a network that is not passive");
+  s.nodes = solved.solve(eq.rhs);
 
   MatrixXd map = MatrixXd::Zero(s.rows, col.all);
   for (const si_capacitor& c : e.capacitors) {

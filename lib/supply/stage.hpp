@@ -21,7 +21,6 @@ struct stage {
   std::vector<double> c;   // [C; F], column by column, rows high
   Eigen::MatrixXd nodes;   // volts of every node from [b, mains, 1, i]
   Eigen::MatrixXd port_y;  // admittance of the ports over this stage
-  double f(int row, int column) const { return c[static_cast<std::size_t>(column * rows + states + row)]; }
 };
 
 /// Solves the nodal equations for all right-hand sides at once.

@@ -58,7 +58,7 @@ TEST_CASE("the waveform is a whole drawing with its text as text", "[cli]") {
   const std::string svg = turnwright::testing::file_text(file);
   CHECK(svg.rfind("<svg ", 0) == 0);
   CHECK(svg.find("<title id=\"title\">Waveforms of a &lt;known&gt; &amp; tried supply</title>") != std::string::npos);
-  CHECK(svg.find(">anode 2</text>") != std::string::npos);
+  CHECK(svg.find(">second half</text>") != std::string::npos);
   CHECK(svg.find("nan") == std::string::npos);
   CHECK(run_tool("supply - --waveform '" + file + "'", job).status == 2);  // it is there already
   CHECK(run_tool("supply - --force --waveform '" + file + "'", job).status == 0);

@@ -199,6 +199,10 @@ TEST_CASE("listed valves give the heaters their current, and the HT a first gues
   guessed["secondaries"][0]["voltage"] = "250-0-250 V";
   const demand d = demand_of(guessed);
   CHECK(plain(d.secondaries[0].rail->nodes[0].full.constant.plain()) > 0.08);
+  json thin = job;
+  thin["secondaries"][1]["current"] = "1.5 A";
+  CHECK(has(plan(demand_of(thin), tools()).checks, "open-questions", level::stop));
+  CHECK(has(plan(demand_of(job), tools()).checks, "open-questions", level::pass));
   json odd = job;
   odd["secondaries"][1]["voltage"] = "2.5 V";
   CHECK(faults_of(odd)[0].where == "job.json /secondaries/1/current");
@@ -281,6 +285,61 @@ TEST_CASE("a choke input that runs dry at idle is stopped, with the bleeder that
   const supply_study wet = study_of(job);
   CHECK(has(rail_checks(wet), "choke-input", level::pass));
   CHECK(plain(wet.rails[0].nodes[0].idle.plain()) < plain(dry.rails[0].nodes[0].idle.plain()));
+}
+
+TEST_CASE("two bias rails may hang on one tap, and a tap may reach the end of its half", "[past]") {
+  json job = without(to_plan, "/secondaries/0", "target");
+  job["secondaries"][0]["voltage"] = "300-0-300 V";
+  for (const char* name : {"bias", "other bias"})
+    job["secondaries"].push_back(
+        {{"name", name}, {"tap_of", "HT"}, {"voltage", "48 V"}, {"polarity", "negative"}, {"dc_current", "1 mA"}});
+  const design p = plan(demand_of(job), tools());
+  REQUIRE(p.supply.rails.size() == 3);
+  CHECK(p.made.nominal.electric.settled);
+  // Each by itself would give the same but for the other's drop.
+  CHECK(plain(p.supply.rails[1].nodes[0].full.mean.plain()) ==
+        Approx(plain(p.supply.rails[2].nodes[0].full.mean.plain())).epsilon(1e-3));
+  CHECK(p.wanted.secondaries[2].rail->kind == supply::circuit::half_wave);
+}
+
+TEST_CASE("taps that cannot be are refused", "[past]") {
+  json leaky = json::parse(known);
+  leaky["secondaries"].push_back({{"name", "bias"},
+                                  {"tap_of", "HT"},
+                                  {"no_load_voltage", "50 V"},
+                                  {"resistance", "8 ohm"},
+                                  {"leakage_inductance", "5 mH"},
+                                  {"rail", {{{"node", "A"}, {"capacitor", "47 uF"}, {"load", "1 mA"}}}}});
+  CHECK(faults_of(leaky)[0].code == "tap");
+  json crossed = leaky;
+  crossed["secondaries"][2].erase("leakage_inductance");
+  CHECK(faults_of(crossed).empty());
+  crossed["secondaries"].push_back(crossed["secondaries"][2]);
+  crossed["secondaries"][3]["name"] = "more bias";
+  crossed["secondaries"][3]["no_load_voltage"] = "80 V";
+  crossed["secondaries"][3]["resistance"] = "4 ohm";
+  CHECK(faults_of(crossed)[0].code == "tap");
+  json bridge = crossed;
+  bridge["secondaries"].erase(3);
+  bridge["secondaries"][2]["circuit"] = "bridge";
+  CHECK(faults_of(bridge)[0].where == "job.json /secondaries/2/circuit");
+}
+
+TEST_CASE("a target that no winding reaches is said to be so, soon", "[past]") {
+  const design p =
+      plan(demand_of(changed(to_plan, "/secondaries/0/rectifier", {{"type", "GZ34"}, {"series", "20 kohm"}})), tools());
+  CHECK_FALSE(p.windable);
+  bool said = false;
+  for (const check& c : p.checks) said = said || c.cure.find("no winding reaches the target") != std::string::npos;
+  CHECK(said);
+}
+
+TEST_CASE("the heater of a rectifier valve rides on the HT, whether the job says so or not", "[property]") {
+  json job = json::parse(to_plan);
+  job["secondaries"].push_back({{"name", "rectifier heater"}, {"voltage", "5 V"}, {"current", "1.9 A"}});
+  const demand d = demand_of(job);
+  CHECK(d.secondaries[2].floats_on == "HT");
+  CHECK_FALSE(d.secondaries[1].floats_on);
 }
 
 TEST_CASE("a negative rail has the volts of the positive one with the other sign", "[property]") {
