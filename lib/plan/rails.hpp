@@ -30,7 +30,8 @@ struct amplifier_supply {
   double over_ratio = 0.1, under_ratio = 0.1;  ///< how far the mains may lie above and below nominal
 };
 
-/// The network at a state of load and at so much of the nominal mains.
+/// The network at a state of load and at so much of the nominal mains, its resistances and shunt as they are at
+/// nominal.
 supply::network network_at(const amplifier_supply& a, load_state load, double mains_ratio);
 
 struct planned_node {

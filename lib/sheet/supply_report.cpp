@@ -83,19 +83,16 @@ std::string rectifier_table(const planned_rail& r) {
 
 std::string windings_table(const supply_study& s) {
   text_table t({"winding", "V open", "V loaded", "A rms", "A dc", "VA", "W lost"});
+  const auto line = [&](const std::string& name, std::size_t port) {
+    const supply::port_state& p = s.full.ports[port];
+    t.add({name, volts_text(plain(p.no_load.plain())), volts_text(plain(p.on_load.plain())),
+           number(plain(p.current.plain()), 4),
+           carries_dc(p.current_dc, p.current) ? number(plain(p.current_dc.plain()), 3) : "",
+           number(plain(apparent_power(p.on_load, p.current)), 3), number(plain(s.full.copper[port]), 3)});
+  };
   for (const supplied_winding& w : s.of.windings) {
-    for (const std::size_t port : {w.first, w.second.value_or(w.first)}) {
-      if (w.second == port || port == w.first) {
-        const supply::port_state& p = s.full.ports[port];
-        const bool half = w.second.has_value();
-        const double dc = plain(p.current_dc.plain());
-        t.add({half ? w.name + (port == w.first ? ", first half" : ", second half") : w.name,
-               volts_text(plain(p.no_load.plain())), volts_text(plain(p.on_load.plain())),
-               number(plain(p.current.plain()), 4), carries_dc(p.current_dc, p.current) ? number(dc, 3) : "",
-               number(plain(apparent_power(p.on_load, p.current)), 3), number(plain(s.full.copper[port]), 3)});
-      }
-      if (!w.second) break;
-    }
+    line(w.second ? w.name + ", first half" : w.name, w.first);
+    if (w.second) line(w.name + ", second half", *w.second);
   }
   const supply::state& f = s.full;
   std::string out = "Windings at full load, " + written(s.of.base.mains.plain()) + " at the wall\n" + t.text();

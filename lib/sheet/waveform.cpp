@@ -46,7 +46,7 @@ class field {
     }
     std::sort(marks.begin(), marks.end());
     marks.erase(std::unique(marks.begin(), marks.end()), marks.end());
-    for (const double v : marks) d_.text(left - 6, height_of(v) + 4, shown_plain(v, of_), anchor::end);
+    for (const double v : marks) d_.text(left - 6, height_of(v) + 4, v == 0 ? "0" : shown_plain(v, of_), anchor::end);
     d_.rule(left, height_of(0), left + wide, height_of(0));
     std::vector<double> taken;
     for (const line& l : lines_) draw_line(l, taken);

@@ -79,8 +79,8 @@ std::vector<double> negative(std::vector<double> y) {
 
 class reader {
  public:
-  reader(const network& net, const elements& e, const stepper& grid, const shot& s)
-      : net_(net), e_(e), grid_(grid), shot_(s), mean_(s.last, grid.steps()) {}
+  reader(const elements& e, const stepper& grid, const shot& s)
+      : e_(e), grid_(grid), shot_(s), mean_(s.last, grid.steps()) {}
 
   state finish(bool with_curves) {
     add_ports();
@@ -274,7 +274,6 @@ class reader {
     }
   }
 
-  const network& net_;
   const elements& e_;
   const stepper& grid_;
   const shot& shot_;
@@ -295,8 +294,8 @@ double crest(const std::vector<double>& y) {
   return *top + std::min(lift, bend / 8);
 }
 
-state figures_of(const network& net, const elements& e, const stepper& grid, const shot& s, bool with_curves) {
-  return reader(net, e, grid, s).finish(with_curves);
+state figures_of(const elements& e, const stepper& grid, const shot& s, bool with_curves) {
+  return reader(e, grid, s).finish(with_curves);
 }
 
 }  // namespace turnwright::supply::kernel

@@ -7,8 +7,8 @@
 
 namespace turnwright::supply::kernel {
 
-/// All figures of a network's periodic state; `curves` too where asked for.
-state figures_of(const network& net, const elements& e, const stepper& grid, const shot& s, bool with_curves);
+/// All figures of a circuit's periodic state; `curves` too where asked for.
+state figures_of(const elements& e, const stepper& grid, const shot& s, bool with_curves);
 
 /// The highest of samples of a closed curve, with the parabola through it and its neighbours.
 double crest(const std::vector<double>& y);

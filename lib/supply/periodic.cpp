@@ -14,7 +14,7 @@ state solve_periodic(const network& net, const grid& g) {
   const elements e = elements_of(net);
   stepper fine(e, g.steps);
   const shot s = shoot(e, fine);
-  return figures_of(net, e, fine, s, g.curves);
+  return figures_of(e, fine, s, g.curves);
 }
 
 network cold(network net) {
