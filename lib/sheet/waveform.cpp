@@ -90,7 +90,7 @@ std::vector<double> signed_as(const std::vector<double>& y, bool negative) {
 std::string diode_name(const planned_rail& r, std::size_t n) {
   if (r.wish.kind == supply::circuit::half_wave) return "rectifier";
   if (r.wish.kind == supply::circuit::full_wave_centre_tap) return n == 0 ? "first half" : "second half";
-  return n == 0 ? "rising half cycle" : "falling half cycle";
+  return n == 0 ? "positive half cycle" : "negative half cycle";
 }
 
 // A title that fits the sheet, cut at a blank where it is longer; the whole of it stands in the file's own title.
